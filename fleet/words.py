@@ -157,6 +157,7 @@ FAULTS = _words(
     ("formula without value", "the cell holds a formula whose result was not saved", "open the file in a spreadsheet program, recalculate and save"),
     ("thickness and no reading", "the row gives a thickness and says that none was read", "keep one of the two"),
     ("thickness or result missing", "the row gives neither a thickness nor a result", "write the thickness, or say why there is none under 'result'"),
+    ("name turned into a date", "the cell that names something holds a date or a time", "format the column as text and type the name again"),
     ("average below thickness", "the average is below the least thickness", "check the two columns"),
     ("unknown rule set", "no in-service rule set of that name is installed", "use one of the installed rule sets"),
     ("unknown design code", "no pressure code of that name is known", "use asme8-1 or membrane"),
@@ -175,6 +176,8 @@ DOUBTS = _words(
     ("written as text", "the number is stored as text", "store it as a number; it was understood"),
     ("already loaded", "this file was loaded before; nothing was changed", "nothing, or send the corrected file"),
     ("already on record", "the row says what is on record already", "nothing"),
+    ("sheet not taken", "the sheet holds no table that this command takes", "load it with the command that takes it; notes may stay where they are"),
+    ("baseline incomplete", "a baseline needs its thickness and its date, and one of the two is blank", "load both; until then there is no baseline"),
     # of an appraisal
     ("queried low reading governs", "a queried reading lower than its history expects goes on governing", "re-take it; void it only with evidence"),
     ("queried high reading left out", "a queried reading higher than its history expects does not count", "re-take it or clear it"),
@@ -191,6 +194,8 @@ DOUBTS = _words(
     ("knuckle proportions", "the knuckle is tighter than new construction allows", "check the head drawing"),
     ("crown proportions", "the crown radius exceeds the outside diameter", "check the head drawing"),
     ("thin torispherical head", "the head is thinner than 0.002 of its crown radius; the formula may overstate it", "have the head calculated by the thin-head rules"),
+    ("head proportions not checked", "a diameter, crown or knuckle radius is missing to judge the proportions of the head", "load inside_diameter, crown_radius and knuckle_radius"),
+    ("cover bolts not assessed", "the cover is bolted through a gasket; the moment of its bolts is not in the figure", "have the cover calculated with its bolt load"),
     ("edition unknown", "code_edition gives no year; the older, lesser thick-wall form is used", "load code_edition"),
     ("lining not said to count", "lining_counts_in_strength is blank; taken as no", "load lining_counts_in_strength"),
 )  # fmt: skip

@@ -1,0 +1,197 @@
+"""From readings to histories and planning rates: design rules 1 to 4, for all locations at once."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from fleet.appraisal.groups import any_by, count_by, greatest_by
+from fleet.appraisal.inputs import Bools, Floats, Inputs, Ints
+from fleet.appraisal.restarts import RestartIndex, present_histories
+from fleet.appraisal.strength import strength
+from fleet.appraisal.visits import Visits, visits
+from fleet.thinning.clock import ServiceClock
+from fleet.thinning.histories import History, Starts
+from fleet.thinning.observations import Measured, observations
+from fleet.thinning.planning import Chosen, Planning, SharedShift, planning, shared_shift, short_term_in_doubt
+
+
+@dataclass(frozen=True)
+class Thinned:
+    """What the readings say of every location. Arrays of shape (locations,) unless said.
+
+    Parameters
+    ----------
+    live : ndarray
+        Locations in use [-].
+    live_part : ndarray
+        Parts that are on their vessel; shape (parts,) [-].
+    now : History
+        The present history; its walls are walls in strength [-].
+    plan, plan_long : Planning
+        The planning rate, and what it would be were the doubtful short-term rates left out [-].
+    in_doubt : ndarray
+        Where the short-term rate governs within its error [-].
+    shift : SharedShift
+        Parts whose locations shifted together; shape (parts,) [-].
+    visits : Visits
+        Last visits [-].
+    deduct_mm : ndarray
+        Lining that the last reading includes and that does not count in strength [mm].
+    lining_not_told, lining_unknown : ndarray
+        Lined and no word whether the last reading includes it; or its thickness is not recorded [-].
+    queried_low, queried_high : ndarray
+        Whether a queried reading governs or was left out [-].
+    baseline_is_nominal : ndarray
+        Whether a baseline equal to nominal was taken as nominal [-].
+    readings : ndarray
+        Counting readings of the present history [count].
+    last_row : ndarray
+        Row of the last observation's reading in the table of readings, -1 where none [-].
+    """
+
+    live: Bools
+    live_part: Bools
+    now: History
+    plan: Planning
+    plan_long: Planning
+    in_doubt: Bools
+    shift: SharedShift
+    visits: Visits
+    deduct_mm: Floats
+    lining_not_told: Bools
+    lining_unknown: Bools
+    queried_low: Bools
+    queried_high: Bools
+    baseline_is_nominal: Bools
+    readings: Ints
+    last_row: Ints
+
+
+def thinned(inputs: Inputs, clock: ServiceClock, as_of_day: float) -> Thinned:
+    """Work out histories and planning rates.
+
+    Parameters
+    ----------
+    inputs : Inputs
+        Register and record [-].
+    clock : ServiceClock
+        Days that count [-].
+    as_of_day : float
+        The as-of date [day].
+
+    Returns
+    -------
+    Thinned
+    """
+    place, parts = inputs.locations, inputs.parts
+    count, part = len(place), place.part
+    live_part = np.asarray(parts.state != "withdrawn", dtype=np.bool_)
+    live = np.asarray(place.state != "withdrawn", dtype=np.bool_) & live_part[part]
+    read = strength(inputs, as_of_day)
+    index = RestartIndex.of(inputs, as_of_day)
+    span, metal = index.before(read.location, read.day)
+    usable = np.flatnonzero(~np.isnan(read.wall_mm) & ~read.is_nominal)
+    at = read.location[usable]
+    queried = np.asarray(inputs.readings.status[read.row[usable]] == "queried", dtype=np.bool_)
+    seen = observations(
+        Measured(
+            at, read.day[usable], read.wall_mm[usable], inputs.readings.error_mm[read.row[usable]], queried,
+            span[usable], metal[usable],
+        ),
+        count, read.nominal_mm, place.observation_window_days,
+    )  # fmt: skip
+    vessel = parts.vessel[part]
+    baseline_day = greatest_by(np.where(read.is_nominal, read.day, np.nan), read.location, count)
+    starts = Starts(vessel, read.nominal_mm, np.fmax(inputs.vessels.in_service_day[vessel], baseline_day))
+    expected, floor = parts.expected_rate_mm_per_year[part], place.rate_floor_mm_per_year
+    now, old_rate = present_histories(
+        seen, index, starts, place.observation_window_days, clock, expected, floor, as_of_day
+    )
+    shift = shared_shift(now, part, len(parts))
+    chosen = _chosen(inputs, as_of_day)
+    restarted = index.number > 0
+
+    def plan(leave_out_short: Bools | None) -> Planning:
+        return planning(
+            now, restarted=restarted, old_rate=old_rate, expected=expected, floor=floor,
+            as_of_day=as_of_day, chosen=chosen, leave_out_short=leave_out_short,
+        )  # fmt: skip
+
+    governed = plan(None)
+    in_doubt = short_term_in_doubt(now, governed, shift, part)
+    gave_wall = np.zeros(len(read.row), dtype=np.bool_)
+    gave_wall[usable] = seen.counted
+    present = span[usable] == index.number[at]
+    last = (
+        np.where(now.last_reading >= 0, usable[np.maximum(now.last_reading, 0)], -1)
+        if len(usable)
+        else now.last_reading
+    )
+    has = last >= 0
+    last_row = np.where(has, read.row[np.maximum(last, 0)], -1) if len(read.row) else last
+    return Thinned(
+        live=live,
+        live_part=live_part,
+        now=now,
+        plan=governed,
+        plan_long=plan(in_doubt),
+        in_doubt=in_doubt & live,
+        shift=shift,
+        visits=visits(inputs, read, gave_wall, index, live),
+        deduct_mm=_at_last(read.deduct_mm, last),
+        lining_not_told=_at_last(read.not_told.astype(np.float64), last) > 0,
+        lining_unknown=_at_last(read.unknown.astype(np.float64), last) > 0,
+        queried_low=any_by(queried & seen.counted & present, at, count),
+        queried_high=any_by(queried & ~seen.counted & present, at, count),
+        baseline_is_nominal=any_by(read.is_nominal, read.location, count),
+        readings=count_by(seen.counted & present, at, count),
+        last_row=last_row,
+    )
+
+
+def _at_last(values: Floats, last: Ints) -> Floats:
+    """Give the value at the last observation's reading, 0 where there is none."""
+    out = np.zeros(len(last))
+    has = last >= 0
+    out[has] = values[last[has]]
+    return out
+
+
+def _chosen(inputs: Inputs, as_of_day: float) -> Chosen:
+    """Spread the chosen rates over their locations: the nearest wins, of equals the latest."""
+    count, made = len(inputs.locations), inputs.decisions
+    rate, decided = np.full(count, np.nan), np.full(count, np.nan)
+    review, two = np.full(count, np.nan), np.zeros(count, dtype=np.bool_)
+    rows = np.flatnonzero(
+        np.asarray(made.kind == "chosen rate", dtype=np.bool_) & (made.decided_day <= as_of_day)
+    )
+    nearness = (made.part[rows] >= 0).astype(np.int64) + (made.location[rows] >= 0)
+    vessel_of = inputs.parts.vessel[inputs.locations.part]
+    for row in rows[np.lexsort((made.decided_day[rows], nearness))].tolist():
+        if made.location[row] >= 0:
+            here = np.array([made.location[row]])
+        elif made.part[row] >= 0:
+            here = np.flatnonzero(inputs.locations.part == made.part[row])
+        else:
+            here = np.flatnonzero(vessel_of == made.vessel[row])
+        rate[here], decided[here] = made.rate_mm_per_year[row], made.decided_day[row]
+        review[here], two[here] = made.review_day[row], bool(made.second_by[row])
+    return Chosen(rate, decided, review, two)
+
+
+def lining_uncertain(found: Thinned) -> Bools:
+    """Say where the wall in strength is not known because of a lining.
+
+    Parameters
+    ----------
+    found : Thinned
+        What the readings say [-].
+
+    Returns
+    -------
+    ndarray of bool
+        Shape (locations,) [-].
+    """
+    return found.lining_not_told | found.lining_unknown

@@ -1,0 +1,1 @@
+"""Metal-loss assessments of scans. Pure. No method is in this release."""

@@ -1,0 +1,1 @@
+"""Reports: an Appraisal drawn as text, workbook or JSON. No database; nothing is computed a second time."""

@@ -1,0 +1,230 @@
+"""Sheet `The list`: every vessel once, in its block; the verdict on one page, the wall on the next."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from typing import TYPE_CHECKING
+
+from fleet import words
+from fleet.appraisal.views import LocationView, PartView, VesselView
+from fleet.reports import cite
+from fleet.reports.figures import NONE, Figures
+from fleet.reports.source import AppraisalLike, located, reconciled
+from fleet.reports.story import measured_words, operating_sentence, plateau_sentence, relief_sentences
+from fleet.reports.workbook.page import Column, Page, Stamp, Value
+
+if TYPE_CHECKING:
+    from openpyxl.workbook import Workbook
+
+WALL = "Governs life"
+"""Heading of the column with which the second page begins."""
+WHY, CLAUSE = "Why", "Required by clause"
+
+
+def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stamp) -> None:
+    """Draw the sheet.
+
+    Parameters
+    ----------
+    book : Workbook
+        The workbook [-].
+    appraisal : AppraisalLike
+        The appraisal [-].
+    figures : Figures
+        How figures are printed [-].
+    stamp : Stamp
+        What stands on every printed page [-].
+    """
+    page = Page(book, "The list", stamp)
+    page.title(
+        f"The list, {appraisal.as_of.isoformat()}",
+        words.CAUTION,
+        "One block per standing, worst first. Printed on two pages side by side: the verdict, then the wall.",
+        f"{NONE} is a figure that cannot be had; the sheet Gaps says why. A blank does not apply.",
+    )
+    page.heads(columns(figures), freeze=1)
+    for block, members in reconciled(appraisal).items():
+        page.block(f"{block}: {len(members)}" if members else f"{block}: none")
+        for view in members:
+            page.line(row(view, figures), standing=view.standing)
+    page.finish(breaks_before=WALL, elastic=(WHY, CLAUSE))
+
+
+def columns(figures: Figures) -> list[Column]:
+    """List the columns with the units of the reader.
+
+    Parameters
+    ----------
+    figures : Figures
+        How figures are printed [-].
+
+    Returns
+    -------
+    list of Column
+    """
+    pressure, length, rate = (f"[{figures.unit(quantity)}]" for quantity in ("pressure", "length", "rate"))
+    return [
+        Column("Vessel", 16, group="The verdict"),
+        Column("Block", 12),
+        Column("Standing", 12),
+        Column("Flags", 12),
+        Column("Service", 18),
+        Column(WHY, 30),
+        Column(f"Current MAWP {pressure}", number=True, group="Pressure"),
+        Column(f"MAWP today {pressure}", number=True),
+        Column(f"Projected MAWP {pressure}", number=True),
+        Column(f"Projected, uncapped {pressure}", number=True),
+        Column("Carried to", 10),
+        Column(f"Margin then {pressure}", 9, number=True),
+        Column("Governs pressure", 14),
+        Column(f"At list's end {pressure}", number=True),
+        Column(f"Operating pressure {pressure}", number=True, group="Relief and operation"),
+        Column(f"Margin today, operating {pressure}", number=True),
+        Column(f"Relief, lowest set {pressure}", number=True),
+        Column(f"Margin today, relief {pressure}", number=True),
+        Column("Relief and operation in words", 26),
+        Column("Current MAWP holds until", 10, group="Ways out"),
+        Column(f"Pressure that reaches {pressure}", number=True),
+        Column("Repair or renew by", 10),
+        Column(WALL, 16, group="The wall at the place that governs life"),
+        Column(f"Last wall {length}", number=True),
+        Column("Last on", 10),
+        Column(f"Planning rate {rate}", number=True),
+        Column("Basis", 12),
+        Column(f"Long-term rate {rate}", number=True),
+        Column(f"Short-term rate {rate}", number=True),
+        Column(f"Required thickness {length}", number=True),
+        Column("Set by", 10),
+        Column(CLAUSE, 22),
+        Column("Life left [years]", number=True, group="Dates"),
+        Column("Retirement", 10),
+        Column("Internal or on-stream due", 10),
+        Column("External due", 10),
+        Column("Governs due", 16),
+        Column("Interval [years]", number=True),
+        Column("Interval in words", 24),
+        Column("Obser-vations", number=True, group="What it rests on"),
+        Column("Over [years]", number=True),
+        Column(f"Reading error {length}", number=True),
+        Column("Age [years]", number=True),
+        Column("Parts measured", 14),
+        Column("Doubts", number=True),
+        Column("Gaps", number=True),
+    ]
+
+
+def row(view: VesselView, figures: Figures) -> list[Value]:
+    """Give the cells of one vessel.
+
+    Parameters
+    ----------
+    view : VesselView
+        The vessel [-].
+    figures : Figures
+        How figures are printed [-].
+
+    Returns
+    -------
+    list of Value
+        One per column.
+    """
+    part, place = located(view, view.governing_life)
+    return [
+        *(view.vessel, view.block, view.standing, ", ".join(view.flags), view.service, view.sentence),
+        *_pressures(view, figures),
+        *_relief(view, figures),
+        *_ways_out(view, figures),
+        *_wall(view, part, place, figures),
+        *_dates(view, figures),
+        *_rests_on(view, place, figures),
+    ]
+
+
+def _pressures(view: VesselView, figures: Figures) -> Sequence[Value]:
+    at_end = view.projected_mawp_at_list_end_mpa
+    return (
+        figures.carries(view.current_mawp_mpa),
+        figures.carries(view.mawp_today_mpa),
+        figures.carries(view.projected_mawp_mpa),
+        figures.carries(view.projected_mawp_uncapped_mpa),
+        view.carry_to_on or NONE,
+        words.HELD_BY_HALF_LIFE
+        if view.held_by_half_life
+        else figures.carries(_less(view.projected_mawp_mpa, view.current_mawp_mpa)),
+        NONE if view.governing_pressure is None else str(view.governing_pressure),
+        None if at_end is None else figures.carries(at_end),
+    )
+
+
+def _relief(view: VesselView, figures: Figures) -> Sequence[Value]:
+    lowest = min((device.set_pressure_mpa for device in view.relief), default=None)
+    said = [sentence.text for sentence in relief_sentences(view, figures)]
+    said.append(operating_sentence(view, figures))
+    return (
+        figures.asked(view.operating_pressure_mpa),
+        figures.carries(_less(view.mawp_today_mpa, view.operating_pressure_mpa)),
+        figures.asked(lowest),
+        figures.carries(_less(view.mawp_today_mpa, lowest)),
+        " ".join(text for text in said if text),
+    )
+
+
+def _ways_out(view: VesselView, figures: Figures) -> Sequence[Value]:
+    ways = view.ways_out
+    if ways is None:
+        return (None, None, None)
+    return (
+        ways.rating_holds_until or NONE,
+        figures.carries(ways.pressure_that_reaches_mpa),
+        ways.renew_by or NONE,
+    )
+
+
+def _wall(
+    view: VesselView, part: PartView | None, place: LocationView | None, figures: Figures
+) -> Sequence[Value]:
+    governs = NONE if view.governing_life is None else str(view.governing_life)
+    if part is None or place is None:
+        return (governs, *(NONE for _ in range(9)))
+    return (
+        governs,
+        figures.wall(place.last_thickness_mm),
+        place.last_on or NONE,
+        figures.rate(place.planning_rate_mm_per_year),
+        place.rate_basis,
+        figures.rate(place.long_term_rate_mm_per_year),
+        figures.rate(place.short_term_rate_mm_per_year),
+        figures.needed(place.required_thickness_mm),
+        place.required_by or NONE,
+        cite.required_rests_on(part, place.required_by),
+    )
+
+
+def _dates(view: VesselView, figures: Figures) -> Sequence[Value]:
+    return (
+        figures.years(view.life_left_years),
+        view.retirement_on or NONE,
+        view.internal_due_on or NONE,
+        view.external_due_on or NONE,
+        "cap of the rule set" if view.governing_due is None else str(view.governing_due),
+        figures.years(view.internal_interval_years),
+        plateau_sentence(view, figures),
+    )
+
+
+def _rests_on(view: VesselView, place: LocationView | None, figures: Figures) -> Sequence[Value]:
+    counts: tuple[Value, ...] = (measured_words(view), len(view.doubts), len(view.gaps))
+    if place is None:
+        return (NONE, NONE, NONE, NONE, *counts)
+    age = None if place.last_on is None else (view.as_of - place.last_on).days / 365.25
+    return (
+        place.observations,
+        figures.years(place.span_years),
+        figures.needed(place.reading_error_mm),
+        figures.spent(age),
+        *counts,
+    )
+
+
+def _less(one: float | None, other: float | None) -> float | None:
+    return None if one is None or other is None else one - other

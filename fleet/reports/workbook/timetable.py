@@ -1,0 +1,212 @@
+"""Sheet `Timetable`: the pressure that each wall carries, year by year, a stair where it falls short."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from datetime import date
+from typing import TYPE_CHECKING
+
+import numpy as np
+from numpy.typing import NDArray
+
+from fleet import words
+from fleet.appraisal.views import VesselView
+from fleet.reports.figures import NONE, Figures
+from fleet.reports.source import AppraisalLike, TimetableLike
+from fleet.reports.workbook import ink
+from fleet.reports.workbook.page import Column, Page, Stamp
+
+if TYPE_CHECKING:
+    from openpyxl.workbook import Workbook
+
+TOLERANCE = 1e-6
+"""Relative tolerance within which a pressure still holds, as for the standing [-]."""
+LEAD = 3
+"""Columns before the first year [count]."""
+
+
+@dataclass(frozen=True)
+class Row:
+    """One vessel of the timetable.
+
+    Parameters
+    ----------
+    view : VesselView
+        The vessel [-].
+    carried_mpa : ndarray
+        What its wall carries on each date [MPa].
+    first_short : int or None
+        Number of the first date on which that is below the current MAWP, or as many as there are dates if it
+        never is; None where no figure can be had [count].
+    """
+
+    view: VesselView
+    carried_mpa: NDArray[np.float64]
+    first_short: int | None
+
+    def says(self, years: Sequence[date]) -> str:
+        """Say the first year short in words.
+
+        Parameters
+        ----------
+        years : sequence of date
+            The dates of the timetable [date].
+
+        Returns
+        -------
+        str
+        """
+        if self.first_short is None:
+            return "no figure"
+        return "holds" if self.first_short == len(years) else str(years[self.first_short].year)
+
+
+def rows(views: Sequence[VesselView], table: TimetableLike) -> list[Row]:
+    """Put the vessels in the order in which each first drops below its current MAWP.
+
+    Parameters
+    ----------
+    views : sequence of VesselView
+        The vessels, in the order of the register [-].
+    table : TimetableLike
+        What they carry [-].
+
+    Returns
+    -------
+    list of Row
+        Those that drop in the same year by how far they have dropped; those without a figure last.
+    """
+    made = []
+    for number, view in enumerate(views):
+        carried = np.asarray(table.mawp_mpa[number], dtype=np.float64)
+        current = float(table.current_mawp_mpa[number])
+        made.append((Row(view, carried, _first_short(carried, current)), current))
+
+    def order(pair: tuple[Row, float]) -> tuple[bool, int, float]:
+        row, current = pair
+        if row.first_short is None:
+            return True, 0, 0.0
+        at = min(row.first_short, len(row.carried_mpa) - 1)
+        return False, row.first_short, float(row.carried_mpa[at]) / current
+
+    return [row for row, _ in sorted(made, key=order)]
+
+
+def _first_short(carried: NDArray[np.float64], current: float) -> int | None:
+    """Find the first date that falls short; a figure missing before it leaves that unknown."""
+    if not current > 0:
+        return None
+    for number, pressure in enumerate(carried):
+        if np.isnan(pressure):
+            return None
+        if not pressure >= current * (1 - TOLERANCE):
+            return number
+    return len(carried)
+
+
+def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stamp) -> None:
+    """Draw the sheet.
+
+    Parameters
+    ----------
+    book : Workbook
+        The workbook [-].
+    appraisal : AppraisalLike
+        The appraisal [-].
+    figures : Figures
+        How figures are printed [-].
+    stamp : Stamp
+        What stands on every printed page [-].
+    """
+    table = appraisal.timetable()
+    years = tuple(table.years)
+    made = rows(appraisal.views(), table)
+    page = Page(book, "Timetable", stamp)
+    unit = figures.unit("pressure")
+    page.title(
+        "Timetable",
+        f"What each wall carries on {_day_of(years)} of each year [{unit}], capped as on the list.",
+        "Left of and below the heavy stair the current MAWP holds; right of and above it, it does not.",
+    )
+    page.heads(
+        [
+            Column("Vessel", 16),
+            Column("First year short", 10),
+            Column(f"Current MAWP [{unit}]", number=True),
+            *(Column(f"{head} [{unit}]", number=True) for head in year_heads(years)),
+        ]
+    )
+    first = page.row
+    for row in made:
+        carried = [figures.carries(float(pressure)) for pressure in row.carried_mpa]
+        current = figures.carries(row.view.current_mawp_mpa)
+        page.line([row.view.vessel, row.says(years), current, *carried], standing=row.view.standing)
+    page.finish()
+    _draw_stair(page, first, made, len(years))
+    _say_it(page, made, years)
+
+
+def year_heads(years: Sequence[date]) -> list[str]:
+    """Head the columns by their year, or by the whole day where two fall into one year.
+
+    Parameters
+    ----------
+    years : sequence of date
+        The dates of the timetable [date].
+
+    Returns
+    -------
+    list of str
+
+    Examples
+    --------
+    >>> year_heads([date(2026, 12, 1), date(2027, 12, 1)])
+    ['2026', '2027']
+    """
+    heads = [str(day.year) for day in years]
+    return heads if len(set(heads)) == len(heads) else [day.isoformat() for day in years]
+
+
+def _day_of(years: Sequence[date]) -> str:
+    """Name the day of the year of the first date; the others may lie a day beside it in leap years."""
+    return f"{years[0].day} {years[0]:%B}" if years else NONE
+
+
+def _draw_stair(page: Page, first: int, made: Sequence[Row], count: int) -> None:
+    above: int | None = None
+    for number, row in enumerate(made):
+        here = row.first_short
+        if here is None:
+            break
+        for year in range(count + 1):
+            left = year == here
+            top = above is not None and above <= year < here
+            if left or top:
+                cell = page.sheet.cell(first + number, page.FIRST + LEAD + year)
+                cell.border = ink.stair(left=left, top=top, inside=year < count)
+        above = here
+
+
+def _say_it(page: Page, made: Sequence[Row], years: Sequence[date]) -> None:
+    """Say beneath the stair, in words, what it shows."""
+    page.row += 1
+    page.put(page.row, page.FIRST, "The same in words", "block")
+    page.row += 1
+    for number, day in enumerate(years):
+        short = [row.view.vessel for row in made if row.first_short == number]
+        _said(page, f"First short on {day.isoformat()}", short, len(years))
+    _said(
+        page, f"Hold to {years[-1].isoformat()}" if years else "Hold", _holding(made, len(years)), len(years)
+    )
+    _said(page, "No figure", [row.view.vessel for row in made if row.first_short is None], len(years))
+    page.put(page.row, page.FIRST, f"{len(made)} vessels in all. {words.CAUTION}", "note")
+
+
+def _holding(made: Sequence[Row], count: int) -> list[str]:
+    return [row.view.vessel for row in made if row.first_short == count]
+
+
+def _said(page: Page, head: str, tags: Sequence[str], years: int) -> None:
+    text = f"{head}: {', '.join(tags) if tags else 'none'}"
+    page.sentence(text, "line", columns=LEAD + years, letters=20 + 8 * years, height=12)

@@ -1,0 +1,320 @@
+"""Tell intake what is on record: the register with its facts, and the readings of every location."""
+
+from __future__ import annotations
+
+from collections import defaultdict
+from collections.abc import Iterable
+from dataclasses import dataclass
+from datetime import date
+from typing import Any, Literal
+
+import numpy as np
+from sqlalchemy import Connection
+
+from fleet.appraisal.inputs import DEFAULT_READING_ERROR_MM, Floats, Inputs
+from fleet.intake.known import (
+    History,
+    KnownLocation,
+    KnownPart,
+    KnownRegister,
+    KnownVessel,
+    LocationKey,
+    PartKey,
+    Recorded,
+)
+from fleet.store import facts, models
+from fleet.tasks import settings as levels
+from fleet.tasks.assemble import fetch_inputs
+from fleet.tasks.names import Names, fetch_names
+from fleet.tasks.starting import STARTING_BASIS
+
+Columns = dict[str, list[Any]]
+Standing = Literal["accepted", "queried", "voided", "past"]
+
+
+@dataclass(frozen=True)
+class OnRecord:
+    """Everything that a load is compared with.
+
+    Parameters
+    ----------
+    known : int
+        Number of the last journal entry that was read [count].
+    inputs : Inputs
+        The register and the record as arrays [-].
+    names : Names
+        From tags to entities [-].
+    register : KnownRegister
+        The register as intake wants it [-].
+    """
+
+    known: int
+    inputs: Inputs
+    names: Names
+    register: KnownRegister
+
+
+def fetch_on_record(
+    conn: Connection, *, known: int, today: date, required_mm: Floats | None = None
+) -> OnRecord:
+    """Fetch what a load is compared with.
+
+    Parameters
+    ----------
+    conn : sqlalchemy.Connection
+        An open connection [-].
+    known : int
+        Number of the last journal entry that may be read [count].
+    today : date
+        The day of the load [date].
+    required_mm : Floats, optional
+        Required thickness per location, in the order of the inputs; unknown where absent [mm].
+
+    Returns
+    -------
+    OnRecord
+    """
+    inputs = fetch_inputs(conn, as_of=today, known=known)
+    names = fetch_names(conn, known=known)
+    decisions = facts.columns(conn, models.Decision, known=known)
+    inspections = facts.columns(conn, models.Inspection, known=known)
+    readings = facts.columns(conn, models.Reading, known=known)
+    files = facts.columns(conn, models.SourceFile, known=known)
+    tag = {entity: key[2] for entity, key in names.tags.items()}
+    done = [
+        (tag[vessel], kind, day)
+        for vessel, kind, day in zip(
+            inspections["vessel_id"], inspections["kind"], inspections["done_on"], strict=True
+        )
+    ]
+    register = KnownRegister(
+        vessels=_vessels(inputs, _re_ratings(decisions, today, tag), done),
+        parts=_parts(inputs),
+        locations=_locations(
+            inputs, _baselines(names, readings), _errors(conn, known, today, inputs, names), required_mm
+        ),
+        inspections=frozenset(done),
+        files={
+            digest: kind
+            for digest, kind, parked in zip(files["sha256"], files["kind"], files["rows_parked"], strict=True)
+            if parked == 0
+        },
+    )
+    return OnRecord(known, inputs, names, register)
+
+
+def _number(value: float) -> float | None:
+    return None if np.isnan(value) else float(value)
+
+
+def _day(value: float) -> date | None:
+    return None if np.isnan(value) else date.fromordinal(int(value))
+
+
+def _re_ratings(decisions: Columns, today: date, tag: dict[int, str]) -> dict[str, tuple[float, date, str]]:
+    """Give pressure, day and basis of the re-rating in force of each vessel."""
+    rows = sorted(
+        (
+            (
+                decisions["effective_on"][row] or decisions["decided_on"][row],
+                decisions["entry_no"][row],
+                decisions["id"][row],
+                row,
+            )
+            for row, kind in enumerate(decisions["kind"])
+            if kind == "re-rating"
+        ),
+    )
+    return {
+        tag[decisions["vessel_id"][row]]: (
+            decisions["pressure_mpa"][row],
+            day,
+            decisions["reason"][row] or "",
+        )
+        for day, _, _, row in rows
+        if day <= today
+    }
+
+
+def _vessels(
+    inputs: Inputs,
+    re_ratings: dict[str, tuple[float, date, str]],
+    done: Iterable[tuple[str, str, date]],
+) -> dict[str, KnownVessel]:
+    looked: dict[tuple[str, str], set[date]] = defaultdict(set)
+    for vessel, kind, day in done:
+        looked[vessel, "external" if kind == "external" else "internal"].add(day)
+    table = inputs.vessels
+    found: dict[str, KnownVessel] = {}
+    for row, tag in enumerate(table.tag):
+        recorded: dict[str, set[object]] = {
+            "state": {table.state[row] or "in service"},
+            "last_internal_on": set(looked[tag, "internal"]),
+            "last_external_on": set(looked[tag, "external"]),
+        }
+        if tag in re_ratings:
+            pressure, day, basis = re_ratings[tag]
+            recorded |= {
+                "current_mawp_mpa": {pressure},
+                "current_mawp_from": {day},
+                "current_mawp_basis": {basis} - {STARTING_BASIS},
+            }
+        else:
+            # Blank means nameplate, and a blank nameplate means design pressure: that is what stands on record.
+            nameplate = _number(table.nameplate_mawp_mpa[row])
+            stands = nameplate if nameplate is not None else _number(table.design_pressure_mpa[row])
+            recorded["current_mawp_mpa"] = {stands}
+        found[tag] = KnownVessel(_day(table.in_service_day[row]), recorded)
+    return found
+
+
+def _part_keys(inputs: Inputs) -> list[PartKey]:
+    return [
+        (inputs.vessels.tag[vessel], part)
+        for vessel, part in zip(inputs.parts.vessel, inputs.parts.part, strict=True)
+    ]
+
+
+def location_keys(inputs: Inputs) -> list[LocationKey]:
+    """Name every location of an appraisal's inputs.
+
+    Parameters
+    ----------
+    inputs : Inputs
+        The inputs [-].
+
+    Returns
+    -------
+    list of (str, str, str)
+        Vessel, part and location, in the order of the inputs [text].
+    """
+    parts = _part_keys(inputs)
+    return [
+        (*parts[part], location)
+        for part, location in zip(inputs.locations.part, inputs.locations.location, strict=True)
+    ]
+
+
+def _parts(inputs: Inputs) -> dict[PartKey, KnownPart]:
+    table = inputs.parts
+    return {
+        key: KnownPart(
+            shape=table.shape[row],
+            nominal_thickness_mm=float(table.nominal_thickness_mm[row]),
+            lining=table.lining[row],
+            lining_thickness_mm=float(table.lining_thickness_mm[row]),
+            lining_counts_in_strength=table.lining_counts_in_strength[row],
+            alert_thickness_mm=float(table.alert_thickness_mm[row]),
+            recorded={"state": {table.state[row] or "in service"}},
+        )
+        for row, key in enumerate(_part_keys(inputs))
+    }
+
+
+def _locations(
+    inputs: Inputs,
+    baselines: dict[LocationKey, list[tuple[float, date]]],
+    errors: Floats,
+    required_mm: Floats | None,
+) -> dict[LocationKey, KnownLocation]:
+    table = inputs.locations
+    of_part = inputs.parts.alert_thickness_mm[table.part]
+    alert = np.where(np.isnan(table.alert_thickness_mm), of_part, table.alert_thickness_mm)
+    required = np.full(len(table), np.nan) if required_mm is None else required_mm
+    found: dict[LocationKey, KnownLocation] = {}
+    for row, key in enumerate(location_keys(inputs)):
+        recorded: dict[str, set[object]] = {"state": {table.state[row] or "in service"}}
+        if key in baselines:
+            recorded["baseline_thickness_mm"] = {thickness for thickness, _ in baselines[key]}
+            recorded["baseline_on"] = {day for _, day in baselines[key]}
+        found[key] = KnownLocation(float(alert[row]), float(required[row]), float(errors[row]), recorded)
+    return found
+
+
+def _baselines(names: Names, readings: Columns) -> dict[LocationKey, list[tuple[float, date]]]:
+    found: dict[LocationKey, list[tuple[float, date]]] = defaultdict(list)
+    for row, kind in enumerate(readings["kind"]):
+        if kind == "baseline" and readings["thickness_mm"][row] is not None:
+            vessel, part, location = names.path(readings["location_id"][row])
+            found[vessel, part, location].append((readings["thickness_mm"][row], readings["taken_on"][row]))
+    return dict(found)
+
+
+def _errors(conn: Connection, known: int, today: date, inputs: Inputs, names: Names) -> Floats:
+    """Resolve the reading error of each location, for comparing new readings with old ones."""
+    in_force = levels.in_force(conn, as_of=today, known=known)
+    entities = [names.location(*key) for key in location_keys(inputs)]
+    parents = [names.tags[entity][1] or 0 for entity in entities]
+    vessels = [names.tags[parent][1] or 0 for parent in parents]
+    set_for = in_force.nearest("reading_error_mm", (entities, parents, vessels), DEFAULT_READING_ERROR_MM)
+    own = in_force.given("reading_error_mm", entities)
+    rows = facts.columns(
+        conn, models.Location, known=known, as_of=today, only=("entity_id", "reading_error_mm")
+    )
+    register = dict(zip(rows["entity_id"], rows["reading_error_mm"], strict=True))
+    told = np.array([register.get(entity) for entity in entities], dtype=np.float64)
+    resolved: Floats = np.where(np.isnan(own) & ~np.isnan(told), told, set_for)
+    return resolved
+
+
+def fetch_history(conn: Connection, record: OnRecord, *, window_days: float) -> History:
+    """Fetch the readings of every location, each with its standing.
+
+    Parameters
+    ----------
+    conn : sqlalchemy.Connection
+        An open connection [-].
+    record : OnRecord
+        The register on record [-].
+    window_days : float
+        Days within which readings make one observation [day].
+
+    Returns
+    -------
+    History
+        By location, in order of date.
+    """
+    columns = facts.columns(
+        conn,
+        models.Reading,
+        known=record.known,
+        only=("id", "location_id", "taken_on", "thickness_mm", "status"),
+    )
+    rows: dict[int, list[tuple[date, int, float, Standing]]] = defaultdict(list)
+    for number, entity, day, thickness, status in zip(*columns.values(), strict=True):
+        rows[entity].append((day, number, float("nan") if thickness is None else thickness, status))
+    restarts = _last_restarts(record)
+    found: dict[LocationKey, list[Recorded]] = {}
+    for entity, readings in rows.items():
+        vessel, part, location = record.names.path(entity)
+        readings.sort(key=lambda one: one[:2])
+        began, kind = restarts.get((vessel, part, location), (None, ""))
+        opens = _opening(readings, began) if kind == "new service" else -1
+        found[vessel, part, location] = [
+            Recorded(
+                day,
+                thickness,
+                "past" if began and day < began and status == "accepted" and row != opens else status,
+            )
+            for row, (day, _, thickness, status) in enumerate(readings)
+        ]
+    return History(found, same_observation_days=int(window_days))
+
+
+def _opening(readings: list[tuple[date, int, float, Standing]], began: date | None) -> int:
+    """Give the row of the last accepted wall before a change of service: it opens the new history."""
+    before = [
+        row
+        for row, (day, _, thickness, status) in enumerate(readings)
+        if began and day < began and status == "accepted" and thickness > 0
+    ]
+    return before[-1] if before else -1
+
+
+def _last_restarts(record: OnRecord) -> dict[LocationKey, tuple[date, str]]:
+    """Give day and kind of the last restart of every location that had one."""
+    table, keys = record.inputs.restarts, location_keys(record.inputs)
+    found: dict[LocationKey, tuple[date, str]] = {}
+    for row in np.argsort(table.happened_day, kind="stable"):
+        found[keys[table.location[row]]] = (date.fromordinal(int(table.happened_day[row])), table.kind[row])
+    return found

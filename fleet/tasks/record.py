@@ -1,0 +1,362 @@
+"""Fetch the record: states, readings, restarts, inspections, decisions, relief devices, doubts."""
+
+from __future__ import annotations
+
+from datetime import date
+
+import numpy as np
+from sqlalchemy import Connection
+
+from fleet.appraisal.inputs import (
+    DEFAULT_READING_ERROR_MM,
+    Bools,
+    Decisions,
+    Floats,
+    IdleTimes,
+    Inspections,
+    Ints,
+    Readings,
+    RecordedNotice,
+    Relief,
+    Restarts,
+    Texts,
+)
+from fleet.store import models
+from fleet.tasks import settings as levels
+from fleet.tasks.columns import (
+    Columns,
+    Index,
+    Moment,
+    Tree,
+    by_day,
+    chain,
+    count,
+    days,
+    fetch,
+    of_index,
+    pick,
+    same,
+)
+from fleet.tasks.notices import recorded_notices
+
+
+def re_ratings(decisions: Columns, as_of: date) -> list[int]:
+    """Give the re-ratings effective by the as-of date, the one in force of each vessel last.
+
+    Parameters
+    ----------
+    decisions : Columns
+        The decisions of the as-of date [-].
+    as_of : date
+        The day the figures are about [date].
+
+    Returns
+    -------
+    list of int
+    """
+    rows = [
+        row
+        for row, kind in enumerate(decisions["kind"])
+        if kind == "re-rating" and (decisions["effective_on"][row] or decisions["decided_on"][row]) <= as_of
+    ]
+    return sorted(
+        rows,
+        key=lambda row: (
+            decisions["effective_on"][row] or decisions["decided_on"][row],
+            decisions["entry_no"][row],
+            decisions["id"][row],
+        ),
+    )
+
+
+def fetch_states(conn: Connection, moment: Moment) -> Columns:
+    """Fetch the dated states begun by the as-of date, in the order in which they began.
+
+    Parameters
+    ----------
+    conn : sqlalchemy.Connection
+        An open connection [-].
+    moment : Moment
+        The day the figures are about and the last entry that may be read [-].
+
+    Returns
+    -------
+    Columns
+    """
+    columns = by_day(fetch(conn, models.DatedState, moment), "from_on", moment.as_of)
+    order = sorted(
+        range(count(columns)),
+        key=lambda row: (columns["from_on"][row], columns["entry_no"][row], columns["id"][row]),
+    )
+    return pick(columns, order)
+
+
+def state_of(states: Columns, index: Index) -> tuple[Texts, Bools]:
+    """Give the state in force of each entity, and whether the day it began is unknown.
+
+    Parameters
+    ----------
+    states : Columns
+        The dated states in the order in which they began [-].
+    index : dict of int to int
+        Entity to index [count].
+
+    Returns
+    -------
+    tuple of Texts and Bools
+    """
+    state = np.full(len(index), "", dtype=np.object_)
+    undated = np.zeros(len(index), dtype=np.bool_)
+    for row, entity in enumerate(states["subject_id"]):
+        place = index.get(entity)
+        if place is not None:
+            state[place] = states["state"][row]
+            undated[place] = states["date_known"][row] == "no"
+    return state, undated
+
+
+def idle_times(tree: Tree, states: Columns) -> IdleTimes:
+    """Give the spans of the state `idle protected`; a span that goes on has no end.
+
+    Parameters
+    ----------
+    tree : Tree
+        The register by index [-].
+    states : Columns
+        The dated states in the order in which they began [-].
+
+    Returns
+    -------
+    IdleTimes
+    """
+    spans: list[tuple[int, float, float]] = []
+    begun: dict[int, float] = {}
+    for row, entity in enumerate(states["subject_id"]):
+        place = tree.vessel.get(entity)
+        if place is None:
+            continue
+        day = float(states["from_on"][row].toordinal())
+        protected = states["state"][row] == "idle protected"
+        if place in begun and not protected:
+            spans.append((place, begun.pop(place), day))
+        elif protected:
+            begun.setdefault(place, day)
+    spans += [(place, day, np.nan) for place, day in begun.items()]
+    spans = sorted(span for span in spans if not span[1] >= span[2])
+    return IdleTimes.of(
+        len(spans),
+        vessel=[span[0] for span in spans],
+        from_day=[span[1] for span in spans],
+        to_day=[span[2] for span in spans],
+    )
+
+
+def fetch_readings(
+    conn: Connection, moment: Moment, tree: Tree, in_force: levels.Levels
+) -> tuple[Readings, dict[int, date]]:
+    """Fetch the readings that count, and the day of every reading in force for the doubts about them.
+
+    Parameters
+    ----------
+    conn : sqlalchemy.Connection
+        An open connection [-].
+    moment : Moment
+        The day the figures are about and the last entry that may be read [-].
+    tree : Tree
+        The register by index [-].
+    in_force : Levels
+        The settings in force [-].
+
+    Returns
+    -------
+    tuple of Readings and dict of int to date
+    """
+    every = fetch(conn, models.Reading, moment)
+    days = dict(zip(every["id"], every["taken_on"], strict=True))
+    rows = [
+        row
+        for row, day in enumerate(every["taken_on"])
+        if day <= moment.as_of
+        and every["status"][row] != "voided"
+        and every["location_id"][row] in tree.location
+    ]
+    columns = pick(every, rows)
+    place = np.array([tree.location[entity] for entity in columns["location_id"]], dtype=np.int64)
+    surveys = fetch(conn, models.Survey, moment)
+    name = dict(zip(surveys["id"], surveys["name"], strict=True))
+    error = dict(zip(surveys["id"], surveys["reading_error_mm"], strict=True))
+    table = Readings.of(
+        len(rows),
+        **same(columns, Readings),
+        location=place,
+        reading_id=columns["id"],
+        taken_day=days(columns["taken_on"]),
+        survey=[name.get(survey) for survey in columns["survey_id"]],
+        error_mm=_reading_error(
+            tree, in_force, place, [error.get(survey) for survey in columns["survey_id"]]
+        ),
+    )
+    return table, days
+
+
+def _reading_error(tree: Tree, in_force: levels.Levels, place: Ints, survey: list[float | None]) -> Floats:
+    """Resolve the reading error: location, else survey, else part, vessel, database."""
+    place_chain = chain(tree)
+    register = np.array(tree.locations["reading_error_mm"], dtype=np.float64)  # None becomes NaN
+    own = in_force.given("reading_error_mm", place_chain[0])
+    nearest = np.where(np.isnan(own), register, own)[place]
+    told = np.array(survey, dtype=np.float64)
+    wider = in_force.nearest("reading_error_mm", place_chain[1:], DEFAULT_READING_ERROR_MM)[place]
+    resolved: Floats = np.where(~np.isnan(nearest), nearest, np.where(~np.isnan(told), told, wider))
+    return resolved
+
+
+def fetch_restarts(conn: Connection, moment: Moment, tree: Tree) -> Restarts:
+    """Fetch the restarts, a row for every location that each begins anew.
+
+    Parameters
+    ----------
+    conn : sqlalchemy.Connection
+        An open connection [-].
+    moment : Moment
+        The day the figures are about and the last entry that may be read [-].
+    tree : Tree
+        The register by index [-].
+
+    Returns
+    -------
+    Restarts
+    """
+    columns = by_day(fetch(conn, models.Restart, moment), "happened_on", moment.as_of)
+    named = fetch(conn, models.RestartLocation, moment)
+    of_part: dict[int, list[int]] = {}
+    for row, part in enumerate(tree.location_part):
+        of_part.setdefault(tree.parts["entity_id"][part], []).append(row)
+    by_restart: dict[int, set[int]] = {restart: set() for restart in columns["id"]}
+    for restart, entity in zip(named["restart_id"], named["location_id"], strict=True):
+        if restart in by_restart and entity in tree.location:
+            by_restart[restart].add(tree.location[entity])
+    rows: list[tuple[int, int]] = []
+    for row, restart in enumerate(columns["id"]):
+        whole = of_part.get(columns["part_id"][row], []) if columns["whole_part"][row] else []
+        rows += [(place, row) for place in sorted(by_restart[restart].union(whole))]
+    return Restarts.of(
+        len(rows),
+        location=[place for place, _ in rows],
+        kind=[columns["kind"][row] for _, row in rows],
+        what=[columns["what"][row] for _, row in rows],
+        happened_day=days(columns["happened_on"][row] for _, row in rows),
+    )
+
+
+def fetch_inspections(conn: Connection, moment: Moment, tree: Tree) -> Inspections:
+    """Fetch the inspections done by the as-of date.
+
+    Parameters
+    ----------
+    conn : sqlalchemy.Connection
+        An open connection [-].
+    moment : Moment
+        The day the figures are about and the last entry that may be read [-].
+    tree : Tree
+        The register by index [-].
+
+    Returns
+    -------
+    Inspections
+    """
+    every = by_day(fetch(conn, models.Inspection, moment), "done_on", moment.as_of)
+    columns, vessel = of_index(every, "vessel_id", tree.vessel)
+    return Inspections.of(
+        len(vessel), **same(columns, Inspections), vessel=vessel, done_day=days(columns["done_on"])
+    )
+
+
+def decisions_of(tree: Tree, decisions: Columns) -> Decisions:
+    """Give every decision but the re-ratings, which stand in the current MAWP.
+
+    Parameters
+    ----------
+    tree : Tree
+        The register by index [-].
+    decisions : Columns
+        The decisions of the as-of date [-].
+
+    Returns
+    -------
+    Decisions
+    """
+    counted = pick(decisions, [row for row, kind in enumerate(decisions["kind"]) if kind != "re-rating"])
+    columns, vessel = of_index(counted, "vessel_id", tree.vessel)
+    return Decisions.of(
+        len(vessel),
+        **same(columns, Decisions),
+        vessel=vessel,
+        part=[tree.part.get(entity, -1) for entity in columns["part_id"]],
+        location=[tree.location.get(entity, -1) for entity in columns["location_id"]],
+        decided_day=days(columns["decided_on"]),
+        until_day=days(columns["until_on"]),
+        review_day=days(columns["review_on"]),
+    )
+
+
+def fetch_relief(conn: Connection, moment: Moment, tree: Tree) -> Relief:
+    """Fetch the relief devices linked to the vessels.
+
+    Parameters
+    ----------
+    conn : sqlalchemy.Connection
+        An open connection [-].
+    moment : Moment
+        The day the figures are about and the last entry that may be read [-].
+    tree : Tree
+        The register by index [-].
+
+    Returns
+    -------
+    Relief
+    """
+    columns, vessel = of_index(fetch(conn, models.ReliefDevice, moment, dated=True), "vessel_id", tree.vessel)
+    entities = fetch(conn, models.Entity, moment)
+    name = dict(zip(entities["id"], entities["tag"], strict=True))
+    device = [name[entity] for entity in columns["entity_id"]]
+    order = sorted(range(len(device)), key=lambda row: (vessel[row], device[row]))
+    return Relief.of(
+        len(order),
+        vessel=vessel[order],
+        device=[device[row] for row in order],
+        set_pressure_mpa=[columns["set_pressure_mpa"][row] for row in order],
+    )
+
+
+def fetch_recorded(
+    conn: Connection, moment: Moment, tree: Tree, reading_days: dict[int, date]
+) -> tuple[RecordedNotice, ...]:
+    """Fetch the open doubts and the rows that wait, each at its vessel.
+
+    Parameters
+    ----------
+    conn : sqlalchemy.Connection
+        An open connection [-].
+    moment : Moment
+        The day the figures are about and the last entry that may be read [-].
+    tree : Tree
+        The register by index [-].
+    reading_days : dict of int to date
+        The day of every reading in force [date].
+
+    Returns
+    -------
+    tuple of RecordedNotice
+    """
+    found = recorded_notices(conn, known=moment.known, reading_days=reading_days, as_of=moment.as_of)
+    part_vessel = {entity: int(tree.part_vessel[row]) for entity, row in tree.part.items()}
+    rows: list[RecordedNotice] = []
+    for one in found:
+        location = tree.location.get(one.location_id or 0, -1)
+        vessel = tree.vessel.get(one.vessel_id or 0, part_vessel.get(one.part_id or 0, -1))
+        if vessel < 0 and location >= 0:
+            vessel = int(tree.part_vessel[tree.location_part[location]])
+        if vessel >= 0:
+            rows.append(RecordedNotice(vessel, location, one.notice))
+    return tuple(rows)

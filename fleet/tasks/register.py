@@ -1,0 +1,403 @@
+"""Load the register: what is new and what differs is written, what is on record already is not."""
+
+from __future__ import annotations
+
+from collections import Counter
+from collections.abc import Sequence
+from dataclasses import dataclass, field
+from datetime import date, datetime
+from pathlib import Path as FilePath
+from typing import Any
+
+from sqlalchemy import Connection, Engine
+
+from fleet.errors import FileRefused, Refused
+from fleet.intake.results import Intake, ParkedRow
+from fleet.rules import DESIGN_CODES, rule_set_names
+from fleet.store import facts, journal, models
+from fleet.tasks.changes import KINDS, Change, Compared, Path, compare
+from fleet.tasks.files import Waiting, new_parked, record_files, settled, waiting_on_record
+from fleet.tasks.known import OnRecord, fetch_on_record
+from fleet.tasks.names import Names
+from fleet.tasks.starting import Starting, starting_values
+from fleet.words import Notice
+
+NOT_KEPT = frozenset({"already loaded", "already on record"})
+"""Doubts that are told once and not kept: they say that nothing was done [text]."""
+
+
+@dataclass(frozen=True)
+class RegisterLoaded:
+    """What a load of the register did.
+
+    Parameters
+    ----------
+    wrote : dict of str to int
+        Rows written, by table [count].
+    unchanged : int
+        Rows that say what is on record already [count].
+    parked : int
+        Rows that wait [count].
+    faults, doubts : tuple of Notice
+        All that were found [-].
+    refused : FileRefused or None
+        Why nothing was loaded [-].
+    dry_run : bool
+        Whether nothing was to be written [-].
+    entry_no : int or None
+        Number of the journal entry; None where nothing was written [count].
+    already_loaded : tuple of str
+        Files that were loaded before [text].
+    """
+
+    wrote: dict[str, int] = field(default_factory=dict)
+    unchanged: int = 0
+    parked: int = 0
+    faults: tuple[Notice, ...] = ()
+    doubts: tuple[Notice, ...] = ()
+    refused: FileRefused | None = None
+    dry_run: bool = False
+    entry_no: int | None = None
+    already_loaded: tuple[str, ...] = ()
+
+    @property
+    def loaded(self) -> int:
+        """Rows written."""
+        return sum(self.wrote.values())
+
+    def as_json(self) -> dict[str, Any]:
+        """Give the document for ``--json``."""
+        return {
+            "loaded": self.loaded,
+            "unchanged": self.unchanged,
+            "parked": self.parked,
+            "faults": [one.as_dict() for one in self.faults],
+            "doubts": [one.as_dict() for one in self.doubts],
+        }
+
+    def sentence(self) -> str:
+        """Say in a line or two what was done."""
+        said = [f"{name} was loaded before; nothing of it was changed." for name in self.already_loaded]
+        rows = ", ".join(f"{count} {table}" for table, count in self.wrote.items()) or "nothing"
+        verb = "would be written" if self.dry_run else "written"
+        more = [f"{self.unchanged} rows say what is on record already"] if self.unchanged else []
+        more += [f"{self.parked} rows wait in 'fleet gaps'"] if self.parked else []
+        said.append("; ".join([f"{verb}: {rows}", *more]).capitalize() + ".")
+        said += [f"Journal entry {self.entry_no}."] if self.entry_no is not None else []
+        return " ".join(said)
+
+
+@dataclass(frozen=True)
+class _Plan:
+    """All that one load is going to write."""
+
+    intake: Intake
+    compared: Compared
+    starting: Starting
+    parked: list[ParkedRow]
+    done: list[Waiting]
+    doubts: list[tuple[Path, Notice]]
+    cleared: list[dict[str, Any]]
+
+    @property
+    def empty(self) -> bool:
+        """Whether there is nothing to write."""
+        facts_made = self.starting or self.intake.rows("inspections")
+        return not (self.compared.changes or facts_made or self.parked or self.done)
+
+    @property
+    def counts(self) -> dict[str, int]:
+        """Rows to be written by table, in words for people."""
+        counts = Counter(change.table for change in self.compared.changes)
+        counts["inspections"] = len(self.intake.rows("inspections")) + len(self.starting.inspections)
+        counts["starting values"] = (
+            len(self.starting.states) + len(self.starting.decisions) + len(self.starting.baselines)
+        )
+        order = (*KINDS, "inspections", "starting values")
+        return {table: counts[table] for table in order if counts[table]}
+
+
+def load_register(
+    engine: Engine,
+    files: Sequence[FilePath],
+    *,
+    by: str,
+    today: date,
+    from_on: date | None = None,
+    dry_run: bool = False,
+    park: bool = False,
+    at: datetime | None = None,
+) -> RegisterLoaded:
+    """Load vessels, parts, locations, relief devices and inspections.
+
+    The files of one load are checked together and written together, in one journal entry, or not at all.
+
+    Parameters
+    ----------
+    engine : sqlalchemy.Engine
+        The database [-].
+    files : sequence of pathlib.Path
+        CSV files or workbooks [text].
+    by : str
+        Who loads them [text].
+    today : date
+        The day of the load [date].
+    from_on : date, optional
+        The day of the change that the rows tell of; without it they correct what is on record [date].
+    dry_run : bool
+        Check everything and write nothing [-].
+    park : bool
+        Load the good rows and let the others wait [-].
+    at : datetime, optional
+        Moment of the entry; now where absent [date].
+
+    Returns
+    -------
+    RegisterLoaded
+        With `refused` set where faults keep the files out: nothing was written then.
+
+    Raises
+    ------
+    FileRefused
+        If a file cannot be read at all.
+    Refused
+        If somebody else wrote while the files were being checked.
+    """
+    from fleet.intake import read_register
+
+    with engine.connect() as conn:
+        record = fetch_on_record(conn, known=journal.head(conn).no, today=today)
+        intake = read_register(
+            files,
+            known=record.register,
+            today=today,
+            rule_sets=rule_set_names(),
+            design_codes=tuple(DESIGN_CODES),
+            park=park,
+        )
+        before = tuple(file.name for file in intake.files if file.already_loaded)
+        if intake.refused:
+            return RegisterLoaded(
+                faults=intake.faults,
+                doubts=intake.doubts,
+                refused=_refusal(intake),
+                dry_run=dry_run,
+                already_loaded=before,
+            )
+        plan = _plan(conn, intake, record, by=by, today=today, from_on=from_on)
+    number = None if dry_run or plan.empty else _write(engine, plan, record, by=by, at=at)
+    return RegisterLoaded(
+        wrote=plan.counts,
+        unchanged=plan.compared.unchanged,
+        parked=len(intake.parked),
+        faults=intake.faults,
+        doubts=intake.doubts,
+        dry_run=dry_run,
+        entry_no=number,
+        already_loaded=before,
+    )
+
+
+def _refusal(intake: Intake) -> FileRefused:
+    names = ", ".join(file.name for file in intake.files)
+    count = len(intake.faults)
+    return FileRefused(
+        names,
+        f"{count} fault{'s' if count != 1 else ''}; nothing was loaded",
+        "correct them and load again, or load the good rows with --park-bad-rows",
+        intake.faults,
+        intake.doubts,
+    )
+
+
+def _plan(
+    conn: Connection, intake: Intake, record: OnRecord, *, by: str, today: date, from_on: date | None
+) -> _Plan:
+    compared = compare(conn, intake, names=record.names, known=record.known, today=today, from_on=from_on)
+    starting = starting_values(
+        compared.rows, intake.rows("inspections"), known=record.register, by=by, today=today
+    )
+    waiting = waiting_on_record(conn, known=record.known)
+    told = [(_about(change), one) for change in compared.changes for one in change.row.doubts]
+    told += [((str(row.values["vessel"]),), one) for row in intake.rows("inspections") for one in row.doubts]
+    told = [(path, one) for path, one in told if one.code not in NOT_KEPT]
+    doubts, cleared = _doubts(conn, record, compared, told)
+    return _Plan(
+        intake,
+        compared,
+        starting,
+        new_parked(intake.parked, waiting),
+        settled(waiting, intake),
+        [*doubts, *starting.notices],
+        cleared,
+    )
+
+
+def _about(change: Change) -> Path:
+    """Say what a doubt of a row is about; one of a relief device is about its vessel."""
+    return change.path[:1] if change.table == "relief" else change.path
+
+
+def _doubts(
+    conn: Connection, record: OnRecord, compared: Compared, told: list[tuple[Path, Notice]]
+) -> tuple[list[tuple[Path, Notice]], list[dict[str, Any]]]:
+    """Find the doubts to be added, and those on record that the new rows have settled."""
+    columns = facts.columns(conn, models.Doubt, known=record.known)
+    changed = {change.path for change in compared.changes if not change.new and change.table != "relief"}
+    again = {(path, one.code, one.found) for path, one in told}
+    standing: set[tuple[Path, str, str]] = set()
+    cleared: list[dict[str, Any]] = []
+    for row in range(len(columns["id"])):
+        values = {name: column[row] for name, column in columns.items()}
+        about = values["location_id"] or values["part_id"] or values["vessel_id"]
+        if values["status"] != "open" or values["reading_id"] is not None or about is None:
+            continue
+        key = (record.names.path(about), values["code"], values["found"])
+        if key in again:
+            standing.add(key)
+        elif key[0] in changed and values["code"] != "missing datum":
+            kept = {name: value for name, value in values.items() if name not in {"id", "entry_no", "mark"}}
+            cleared.append({**kept, "status": "cleared", "replaces_id": values["id"]})
+    added = [(path, one) for path, one in told if (path, one.code, one.found) not in standing]
+    return added, cleared
+
+
+def _write(engine: Engine, plan: _Plan, record: OnRecord, *, by: str, at: datetime | None) -> int:
+    with journal.writer(engine, task="register load", by=by, at=at) as entry:
+        refuse_if_overtaken(entry, record.known)
+        ids = _Ids(record.names)
+        for table, kind in KINDS.items():
+            changes = [change for change in plan.compared.changes if change.table == table]
+            _add_entities(entry, ids, kind.entity, changes)
+            parent = kind.parent
+            entry.add(
+                kind.model,
+                [
+                    {
+                        **change.values,
+                        "entity_id": ids.of(kind.entity, change.path),
+                        **({} if parent is None else {parent: ids.parent(change.path)}),
+                    }
+                    for change in changes
+                ],
+            )
+        _add_facts(entry, ids, plan)
+        record_files(entry, plan.intake, kind="register", parked=plan.parked, done=plan.done)
+        return int(entry.no)
+
+
+def refuse_if_overtaken(entry: journal.Entry, known: int) -> None:
+    """Refuse to write on what was read before somebody else wrote.
+
+    Parameters
+    ----------
+    entry : journal.Entry
+        The journal entry, under its lock [-].
+    known : int
+        Number of the last entry that was read [count].
+
+    Raises
+    ------
+    Refused
+        If another entry came in between.
+    """
+    if entry.no != known + 1:
+        raise Refused(
+            f"journal entry {entry.no}",
+            "somebody else wrote to the record while the file was being checked",
+            "run the command again; nothing was recorded",
+        )
+
+
+class _Ids:
+    """The entities on record and those that this entry makes."""
+
+    def __init__(self, names: Names) -> None:
+        self._names = names
+        self._made: dict[tuple[str, Path], int] = {}
+
+    def made(self, kind: str, path: Path, entity: int) -> None:
+        """Remember an entity that this entry made."""
+        self._made[kind, path] = entity
+
+    def of(self, kind: str, path: Path) -> int:
+        """Give the entity of a path."""
+        if (kind, path) in self._made:
+            return self._made[kind, path]
+        return self._names.by_key[kind, self.parent(path), path[-1]]
+
+    def parent(self, path: Path) -> int | None:
+        """Give the entity that a path hangs on."""
+        return None if len(path) == 1 else self.of(("vessel", "part")[len(path) - 2], path[:-1])
+
+    def about(self, path: Path) -> dict[str, int]:
+        """Give the columns that say what a doubt is about."""
+        kinds = ("vessel", "part", "location")
+        return {
+            f"{kind}_id": self.of(kind, path[: depth + 1]) for depth, kind in enumerate(kinds[: len(path)])
+        }
+
+
+def _add_entities(entry: journal.Entry, ids: _Ids, kind: str, changes: list[Change]) -> None:
+    new = [change.path for change in changes if change.new]
+    rows = [{"kind": kind, "parent_id": ids.parent(path), "tag": path[-1]} for path in new]
+    for path, entity in zip(new, entry.add(models.Entity, rows), strict=True):
+        ids.made(kind, path, entity)
+
+
+def _add_facts(entry: journal.Entry, ids: _Ids, plan: _Plan) -> None:
+    starting = plan.starting
+    inspections = [{"vessel_id": ids.of("vessel", path), **fact} for path, fact in starting.inspections]
+    inspections += [
+        {
+            "vessel_id": ids.of("vessel", (str(row.values["vessel"]),)),
+            **{name: row.values.get(name) for name in ("kind", "done_on", "extent", "inspector", "report")},
+        }
+        for row in plan.intake.rows("inspections")
+    ]
+    entry.add(models.Inspection, inspections)
+    entry.add(
+        models.Decision, [{"vessel_id": ids.of("vessel", path), **fact} for path, fact in starting.decisions]
+    )
+    kinds = ("vessel", "part", "location")
+    entry.add(
+        models.DatedState,
+        [{"subject_id": ids.of(kinds[len(path) - 1], path), **fact} for path, fact in starting.states],
+    )
+    readings = entry.add(
+        models.Reading,
+        [{"location_id": ids.of("location", path), **fact} for path, fact in starting.baselines],
+    )
+    of_reading = dict(zip((path for path, _ in starting.baselines), readings, strict=True))
+    doubts = [
+        {**doubt_row(one), **ids.about(path), "reading_id": _reading_of(of_reading, path, one)}
+        for path, one in plan.doubts
+    ]
+    entry.add(models.Doubt, [*doubts, *plan.cleared])
+
+
+def _reading_of(readings: dict[Path, int], path: Path, one: Notice) -> int | None:
+    """Tie a doubt about a wall to the baseline it is about."""
+    about_wall = one.code in {"thickness far above nominal", "suspected unit slip", "baseline equals nominal"}
+    return readings.get(path) if about_wall else None
+
+
+def doubt_row(one: Notice) -> dict[str, str]:
+    """Give the columns of an open doubt.
+
+    Parameters
+    ----------
+    one : Notice
+        The doubt [-].
+
+    Returns
+    -------
+    dict of str to str
+    """
+    return {
+        "code": one.code,
+        "where_text": one.where,
+        "found": one.found,
+        "remedy": one.remedy,
+        "status": "open",
+    }
