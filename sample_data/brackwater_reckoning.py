@@ -48,7 +48,7 @@ def _by_pressure(vessel: Vessel, part: Part, P: float) -> float:
         return float(P * Ro / (2 * SE + (1.0 if vessel.code == "membrane" else 0.8) * P))
     if part.shape != "flat cover":
         return _dished(d, part.shape, t_n, P, SE)
-    return float(d["gasket_diameter"] * math.sqrt(d["cover_factor"] * P / SE))
+    return float(d.get("gasket_diameter", d.get("inside_diameter")) * math.sqrt(d["cover_factor"] * P / SE))
 
 
 def _cone(d: dict[str, Any], S: float, t_n: float, P: float) -> float:
@@ -93,7 +93,8 @@ class Spot:
     long_rate: float
     short_rate: float
     rate: float
-    doubtful: bool  # the short-term rate governs by less than three standard errors
+    ahead: float  # short-term less long-term rate
+    error: float  # its standard error; 0 where there is no short-term rate
 
     @property
     def life(self) -> float:
@@ -117,16 +118,16 @@ def spot(
     served = [_served(vessel, used[0][0], day) for day, _ in used]
     long_span = served[-1]
     long_rate = (used[0][1] - used[-1][1]) / long_span if long_span else 0.0
-    short_rate, doubtful = long_rate, False
+    short_rate, error = long_rate, 0.0
     if len(used) > 2:
         short_span = served[-1] - served[-2]
         short_rate = (used[-2][1] - used[-1][1]) / short_span
         d, D = short_span, long_span
         error = ERROR * math.sqrt(1 / d**2 + 1 / D**2 + (1 / d - 1 / D) ** 2)
-        doubtful = 0 < short_rate - long_rate < 3 * error
     rate = max(chosen or max(long_rate, short_rate), FLOOR)
     need = required(vessel, part)
-    return Spot(part, location, need, used[-1][1], used[-1][0], long_rate, short_rate, rate, doubtful)
+    ahead = short_rate - long_rate
+    return Spot(part, location, need, used[-1][1], used[-1][0], long_rate, short_rate, rate, ahead, error)
 
 
 def _served(vessel: Vessel, start: date, end: date) -> float:
@@ -134,6 +135,15 @@ def _served(vessel: Vessel, start: date, end: date) -> float:
     if vessel.pause:
         days -= max((min(end, vessel.pause[1]) - max(start, vessel.pause[0])).days, 0)
     return days / YEAR
+
+
+def _doubtful(one: Spot, spots: list[Spot]) -> bool:
+    """Say whether the short-term rate governs by less than its error, and the part did not shift as a whole."""
+    beside = [s for s in spots if s.part is one.part and s.error]
+    mean = sum(s.ahead for s in beside) / max(len(beside), 1)
+    error = math.sqrt(sum(s.error**2 for s in beside)) / max(len(beside), 1)
+    together = len(beside) >= 3 and sum(s.ahead > 0 for s in beside) > len(beside) / 2 and mean > 3 * error
+    return 0 < one.ahead < 3 * one.error and not together
 
 
 def judge(vessel: Vessel, spots: list[Spot], looked_on: date) -> tuple[str, dict[str, Any]]:
@@ -163,7 +173,7 @@ def judge(vessel: Vessel, spots: list[Spot], looked_on: date) -> tuple[str, dict
 
     now, due, retire = standing({i: s.rate for i, s in enumerate(spots)})
     by_long, _, _ = standing(
-        {i: max(s.long_rate, FLOOR) if s.doubtful else s.rate for i, s in enumerate(spots)}
+        {i: max(s.long_rate, FLOOR) if _doubtful(s, spots) else s.rate for i, s in enumerate(spots)}
     )
     figures: dict[str, Any] = {
         "due": due, "retire": retire, "re-gauge": now != "rating held" and by_long == "rating held",

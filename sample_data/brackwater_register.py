@@ -5,7 +5,7 @@ from __future__ import annotations
 from datetime import date, timedelta
 
 import numpy as np
-from brackwater_story import LOCAL
+from brackwater_story import BLANKS, LOCAL, NOMINAL_BASELINE
 from brackwater_vessels import AS_OF, TURNAROUNDS, VESSELS
 from brackwater_walls import Row, noise, points
 
@@ -140,7 +140,8 @@ def part_rows() -> list[Row]:
             row |= {"nominal_thickness": part.nominal, "corrosion_allowance": 3 if part.nominal > 11 else 1.5}
             if v.tag == "H-221S":
                 row["expected_rate"] = 0.05
-            rows.append(row | part.drawing)
+            blank = BLANKS.get((v.tag, part.name), ())
+            rows.append({k: x for k, x in (row | part.drawing).items() if k not in blank})
     return rows
 
 
@@ -176,6 +177,8 @@ def location_rows() -> list[Row]:
                     row |= {"damage": "local", "position": "under the acid sparger, about 200 mm wide"}
                 if part.shape == "nozzle neck":
                     row["reading_error"] = 0.15
+                if (v.tag, part.name, point.index) == NOMINAL_BASELINE:
+                    row |= {"baseline_thickness": part.nominal, "baseline_on": v.in_service}
                 if v.tag in {"D-112", "R-412"}:
                     rng = noise(v.tag, point.location, "baseline")
                     measured = point.wall(v.in_service) + part.noise * float(rng.normal())

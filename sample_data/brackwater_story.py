@@ -106,7 +106,15 @@ THICKER = {
 }  # how much thicker than the worst location, where it is not left to chance
 LOCAL = ("D-311", "course 1", 0)
 WITHDRAWN = ("T-151", "course 3", 5, date(2019, 6, 1))
-NEVER = (("D-125", "south head"),)
+NEVER = {("D-125", "south head", i) for i in range(4)} | {("D-313", "top head", 4)}
+FIRST_READ = {("D-205", "south head", 4): date(2026, 5, 1)}  # marked later than the others of its part
+NOMINAL_BASELINE = ("D-313", "top head", 1)
+BLANKS: dict[tuple[str, str], tuple[str, ...]] = {  # cells of the parts sheet that nobody filled in
+    ("D-128", "top head"): ("allowable_stress",),
+    ("D-511", "west head"): ("lining",),
+    ("D-511", "course 1"): ("structural_minimum", "loss_side"),
+    ("R-413", "top head"): ("joint_efficiency",),
+}
 
 
 def location(tag: str, part: str, index: int) -> str:
@@ -170,9 +178,9 @@ EVENTS: dict[str, list[dict[str, object]]] = {
     ],
     "decision": [
         {
-            "entered_on": date(2018, 6, 1), "vessel": "D-206", "kind": "re-rating", "decided_on": date(2018, 5, 28),
-            "effective_on": date(2018, 6, 1), "pressure": "1.9 MPa", "rests_on": "survey of September 2016",
-            "reason": "wall no longer carries the nameplate pressure to the next survey",
+            "entered_on": date(2012, 6, 18), "vessel": "D-206", "kind": "re-rating", "decided_on": date(2012, 6, 14),
+            "effective_on": date(2012, 6, 18), "pressure": "1.9 MPa", "rests_on": "survey of May 2012",
+            "reason": "wall found below what the nameplate pressure needs",
             "decided_by": ENGINEER, "second_by": SECOND,
         },
         {
@@ -240,7 +248,7 @@ TROUBLES: tuple[Trouble, ...] = (
     Trouble("used up by its rate", "D-214", "left out of the survey of 2026; measured above required in 2024, by its rate below it today: `used up by its rate`, overdue", "course 1", 0, _file("2024-04-08", "urea"), "used up by its rate"),
     Trouble("rating short with all three ways out", "D-112", "on the short-life plateau: the inspection is due after two years, but twice the loss leaves too little wall at the planned survey; date, pressure and repair are printed", "course 2", 0, _file("2025-10-06", "ammonia"), "rating short"),
     Trouble("re-check within ninety days", "D-112", "eight locations read again three weeks later: one observation with the first reading, the least of the two governs", "course 2", None, _file("2025-10-27", "ammonia", "D-112_recheck")),
-    Trouble("relief device set above what the wall carries today", "D-206", "re-rated to 1.9 MPa in 2018, the valve still stands at the nameplate's 2.4 MPa: `set above what the wall carries today`", "course 1", 0, REGISTER, "set above what the wall carries today"),
+    Trouble("relief device set above what the wall carries today", "D-206", "re-rated to 1.9 MPa in 2012 after the survey of May, the valve still stands at the nameplate's 2.4 MPa: `set above what the wall carries today`", "course 1", 0, REGISTER, "set above what the wall carries today"),
     Trouble("rate doubled after a change of service", "D-216", "restart of 2019-06-03: the old rate of about 0.11 mm/year ends there, the new one of about 0.25 mm/year plans", "course 1", 0, EVENT_FILE),
     Trouble("held by half life", "D-216", "no planned survey, so the half-life date is the carry-to date: `held by half life` instead of a margin", "course 1", 0, REGISTER, "held by half life"),
     Trouble("no planned survey", "D-216", "gap `no planned survey`; D-126 has none either", "", None, REGISTER, "no planned survey"),
@@ -249,7 +257,7 @@ TROUBLES: tuple[Trouble, ...] = (
     Trouble("wind and weight not assessed", "T-304", "taller than five diameters and required_thickness_axial blank", "", None, REGISTER, "wind and weight not assessed"),
     Trouble("doubled echo on a thin wall", "D-126", "a wall of about 2.4 mm reads about 4.8: loads as a doubt, queried, does not count", "drain N6", 0, _file("2025-10-06", "ammonia"), "thickness far above nominal"),
     Trouble("overdue", "D-126", "last internal look 2015-06-18, ten years are over: flag `overdue`", "", None, REGISTER, "overdue"),
-    Trouble("hot survey corrected twice", "D-402", "gauge and clerk both took 4 % off for 240 °C: every location about 1 mm low; the rate of the last three years runs ahead, flag `re-gauge`, shared shift", "course 1", 0, _file("2026-02-02", "utilities"), "re-gauge"),
+    Trouble("hot survey corrected twice", "D-402", "gauge and clerk both took 4 % off for 240 °C: every location about 1 mm low; told as `shared shift`, and until the survey is voided or repeated its rate stands: `running out`", "course 1", 0, _file("2026-02-02", "utilities"), "shared shift"),
     Trouble("apparent gain", "D-205", "1.5 mm too thick in 2021: doubt when loaded, the earlier lesser wall is used; the fall back in 2024 is a large loss", "north head", 1, _file("2021-10-04", "urea"), "apparent gain"),
     Trouble("course replaced mid-history", "T-303", "restart of 2020-10-08: the history of course 2 begins with the baseline of the day after", "course 2", 0, _file("2020-10-08", "nitrate", "T-303_new_course")),
     Trouble("head never measured", "D-125", "four locations marked, none ever read: `no verdict`", "south head", None, REGISTER, "part never measured"),
@@ -272,6 +280,11 @@ TROUBLES: tuple[Trouble, ...] = (
     Trouble("out of service", "R-413", "block `out of service`", "", None, EVENT_FILE, "out of service"),
     Trouble("idle now", "D-511", "idle and not protected since 2024-03-01: counts as service, block `idle`", "", None, EVENT_FILE, "idle"),
     Trouble("no echo at the last visit", "D-511", "no thickness, which may itself be a thin wall: `no verdict`", "course 1", 3, _file("2026-09-07", "storage"), "no echo at last visit"),
+    Trouble("location never measured", "D-313", "one of five marked spots of the head was never read: gap, beside parts that were measured", "top head", 4, REGISTER, "location never measured"),
+    Trouble("location measured once", "D-205", "marked in 2026 and read once: its rate rests on nominal thickness", "south head", 4, _file("2026-05-11", "urea"), "location measured once"),
+    Trouble("baseline equal to nominal", "D-313", "copied from the drawing, not measured: taken as nominal, with a doubt", "top head", 1, REGISTER, "baseline equals nominal"),
+    Trouble("old receiver with thin papers", "R-413", "nameplate, edition and one joint efficiency blank: design pressure stands for the nameplate, gap `missing datum`", "top head", None, REGISTER, "missing datum"),
+    Trouble("blank cells that count as none", "D-511", "lining, structural minimum and loss side blank: each a gap", "course 1", None, REGISTER, "structural minimum blank"),
     Trouble("sheet in inches", "D-313", "the first nitrate survey is in inches", "", None, _file("2011-06-06", "nitrate")),
     Trouble("sheet in thousandths of an inch", "B-501", "the first storage survey is in thou", "", None, _file("2013-04-08", "storage")),
     Trouble("title and blank rows above the table", "D-401", "found by its header row", "", None, _file("2012-09-10", "utilities")),

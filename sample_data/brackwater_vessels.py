@@ -151,7 +151,7 @@ def hemispherical(
     name: str, di: float, nominal: float, rate: float, count: int, *, e: float = 0.85, **more: Any
 ) -> Part:
     """Draw a hemispherical head."""
-    own = {"inside_diameter": di, "crown_radius": di / 2, "joint_efficiency": e}
+    own = {"inside_diameter": di, "joint_efficiency": e}
     noise = more.pop("noise", 0.12)
     drawing = _drawing(0, more, required_thickness_axial=0, **own)
     return Part(name, "hemispherical head", nominal, rate, count, None, noise, drawing=drawing)
@@ -178,13 +178,12 @@ def cone(
 
 
 def cover(
-    name: str, gasket: float, factor: float, nominal: float, rate: float, count: int, **more: Any
+    name: str, across: float, factor: float, nominal: float, rate: float, count: int, *, bolted: bool = False
 ) -> Part:
-    """Draw a flat bolted cover rated on its gasket diameter."""
-    own = {"gasket_diameter": gasket, "cover_factor": factor, "joint_efficiency": 1.0}
-    return Part(
-        name, "flat cover", nominal, rate, count, drawing=_drawing(0, more, required_thickness_axial=0, **own)
-    )
+    """Draw a flat cover: welded in on its inside diameter, or bolted on its gasket diameter."""
+    own = {"gasket_diameter" if bolted else "inside_diameter": across, "cover_factor": factor}
+    drawing = _drawing(0, {}, joint_efficiency=1.0, required_thickness_axial=0, **own)
+    return Part(name, "flat cover", nominal, rate, count, drawing=drawing)
 
 
 def _d(text: str) -> date:
@@ -289,16 +288,16 @@ UREA: tuple[Vessel, ...] = (
             ellipsoidal("east head", 1400, 18, 0.15, 5, head=11, margin=2.2, noise=0.06),
             neck("inlet N1", 219.1, 8.18, 0.08, 3, head=11),
         ),
-        "below required", _d("2027-05-10"), flags=("overdue", "survey within the year"), troubles=("wall below required",),
+        "below required", _d("2027-05-10"), flags=("overdue",), troubles=("wall below required",),
         externals=(_d("2026-05-20"),)),
     Vessel("D-205", "urea", "liquid ammonia receiver", "ammonia", P70_OLD, "1985", _d("1987-06-15"), 2.1, 50,
         (
-            ellipsoidal("north head", 2000, 24, 0.07, 5, head=13, margin=4.0),
-            shell("course 1", 2000, 2400, 24, 0.10, 7, head=13, margin=3.3, noise=0.07),
-            shell("course 2", 2000, 2400, 24, 0.08, 7, head=13, margin=3.9),
-            ellipsoidal("south head", 2000, 24, 0.06, 5, head=13, margin=4.3),
+            ellipsoidal("north head", 2000, 24, 0.07, 5, head=13, margin=4.4),
+            shell("course 1", 2000, 2400, 24, 0.10, 7, head=13, margin=3.8, noise=0.05),
+            shell("course 2", 2000, 2400, 24, 0.08, 7, head=13, margin=4.4),
+            ellipsoidal("south head", 2000, 24, 0.06, 5, head=13, margin=4.7),
         ),
-        "rating held", _d("2028-09-12"), current=1.6, troubles=("derated years ago", "chosen rate", "apparent gain"),
+        "rating held", _d("2028-09-12"), current=1.6, troubles=("derated years ago", "chosen rate", "apparent gain", "location measured once"),
         columns={"current_mawp": 1.6, "current_mawp_from": _d("2016-04-01"), "current_mawp_basis": "re-rated to 1.60 MPa on calculation BW-C-0416 after the survey of 2014"}),
     Vessel("D-206", "urea", "recycle ammonia drum", "ammonia", P70_OLD, "1985", _d("1987-06-15"), 2.4, 50,
         (
@@ -314,7 +313,7 @@ UREA: tuple[Vessel, ...] = (
             shell("course 1", 1200, 1800, 14, 0.33, 7, head=7, margin=0.66, noise=0.02),
             ellipsoidal("top head", 1200, 14, 0.12, 4, margin=3.0, noise=0.08),
         ),
-        "used up by its rate", _d("2027-05-10"), flags=("overdue", "survey within the year"),
+        "used up by its rate", _d("2027-05-10"), flags=("overdue",),
         troubles=("used up by its rate",), last=_d("2024-12-31")),
     Vessel("D-215", "urea", "solution storage drum", "urea solution", P60_NEW, "2001", _d("2003-03-17"), 0.9, 105,
         (
@@ -331,6 +330,7 @@ UREA: tuple[Vessel, ...] = (
             shell("course 1", 1500, 2000, 16, 0.11, 8, head=9, margin=2.2, noise=0.03),
             shell("course 2", 1500, 2000, 16, 0.05, 6, margin=5.0, noise=0.08),
             ellipsoidal("top head", 1500, 16, 0.04, 4, margin=5.4, noise=0.08),
+            cover("manway cover", 540, 0.3, 34, 0.02, 2, bolted=True),
         ),
         "running out", None, internals=(_d("2014-06-11"), _d("2023-05-09")), change=(_d("2019-06-03"), "course 1", 0.25),
         troubles=("rate doubled after a change of service", "held by half life", "no planned survey", "suspected unit slip")),
@@ -344,7 +344,7 @@ UREA: tuple[Vessel, ...] = (
     Vessel("H-211T", "urea", "ammonia preheater, tube chamber", "ammonia", P70_NEW, "2001", _d("2003-03-17"), 3.0, 120,
         (
             shell("channel", 1000, 900, 20, 0.03, 6, el=1.0, ec=1.0),
-            cover("channel cover", 1060, 0.3, 98, 0.03, 4),
+            cover("channel end plate", 1000, 0.3, 92, 0.03, 4),
             Part("tubesheet", "other", 84, 0.02, 2, drawing={"required_thickness_given": 72.0, "structural_minimum": 0, "required_thickness_axial": 0, "loss_side": "inside", "lining": "none", "static_head": 0, "other_pressure_limit": 3.4}),
         ),
         "rating held", _d("2028-09-12"), columns={"assembly": "H-211"}),
@@ -413,7 +413,7 @@ NITRATE: tuple[Vessel, ...] = (
             shell("course 1", 1500, 2400, 12, 0.07, 8, head=9, el=0.7, ec=0.7, margin=0.2, noise=0.03),
             torispherical("top head", 1500, 1500, 150, 14, 0.03, 5, e=0.85, margin=1.6, noise=0.05),
         ),
-        "at required", _d("2027-06-16"), flags=("survey within the year",), troubles=("wall at required within the reading error",),
+        "at required", _d("2027-06-16"), flags=("survey within the year",), troubles=("wall at required within the reading error", "location never measured", "baseline equal to nominal"),
         externals=(_d("2026-06-17"),)),
 )  # fmt: skip
 
@@ -434,7 +434,7 @@ UTILITIES: tuple[Vessel, ...] = (
             shell("course 2", 1500, 2600, 25, 0.05, 8, head=5, el=1.0, ec=1.0, margin=4.7, noise=0.04),
             ellipsoidal("south head", 1500, 26, 0.04, 5, head=5, e=1.0, noise=0.05),
         ),
-        "running out", _d("2028-02-16"), flags=("re-gauge",), block="re-gauge", troubles=("hot survey corrected twice",)),
+        "running out", _d("2028-02-16"), troubles=("hot survey corrected twice",)),
     Vessel("D-421", "utilities", "deaerator", "boiler feed water", P60_NEW, "2000", _d("2001-05-14"), 0.35, 148,
         (
             ellipsoidal("west head", 2400, 13, 0.04, 5, head=24, structural_minimum=6),
@@ -470,7 +470,8 @@ UTILITIES: tuple[Vessel, ...] = (
             shell("course 1", 1100, 1600, 12, 0.06, 5, margin=2.5, noise=0.06),
             torispherical("top head", 1100, 1100, 110, 15, 0.04, 3, e=0.85),
         ),
-        "", _d("2027-02-17"), flags=("out of service",), block="out of service", troubles=("out of service",), last=_d("2021-12-31")),
+        "", _d("2027-02-17"), flags=("out of service",), block="out of service", troubles=("out of service", "old receiver with thin papers"), last=_d("2021-12-31"),
+        columns={"nameplate_mawp": None, "code_edition": None}),
 )  # fmt: skip
 
 STORAGE: tuple[Vessel, ...] = (
@@ -498,7 +499,7 @@ STORAGE: tuple[Vessel, ...] = (
             shell("course 1", 1300, 2600, 12, 0.06, 8),
             ellipsoidal("east head", 1300, 12, 0.05, 5),
         ),
-        "no verdict", _d("2028-09-20"), flags=("idle",), block="idle", troubles=("idle now", "no echo at the last visit")),
+        "no verdict", _d("2028-09-20"), flags=("idle",), block="idle", troubles=("idle now", "no echo at the last visit", "blank cells that count as none")),
 )  # fmt: skip
 
 VESSELS: tuple[Vessel, ...] = AMMONIA + UREA + NITRATE + UTILITIES + STORAGE

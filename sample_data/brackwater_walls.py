@@ -14,7 +14,18 @@ from typing import Any
 
 import numpy as np
 from brackwater_reckoning import required
-from brackwater_story import HOT_TWICE, NEVER, SPOILT, SURVEYS, SWAPPED, THICKER, WITHDRAWN, Survey, location
+from brackwater_story import (
+    FIRST_READ,
+    HOT_TWICE,
+    NEVER,
+    SPOILT,
+    SURVEYS,
+    SWAPPED,
+    THICKER,
+    WITHDRAWN,
+    Survey,
+    location,
+)
 from brackwater_vessels import VESSELS, Part, Vessel
 
 YEAR = 365.25
@@ -118,8 +129,8 @@ def read_points(vessel: Vessel, survey: Survey) -> Iterator[Row]:
     """Read every location of a vessel in one survey, with what was spoilt on purpose."""
     day, start = visit_day(vessel, survey), survey.start.isoformat()
     for point in points(vessel):
-        part, key = point.part, (vessel.tag, point.part.name)
-        if key in NEVER or (survey.only and part.name != survey.only[1]):
+        part, key = point.part, (vessel.tag, point.part.name, point.index)
+        if key in NEVER or day < FIRST_READ.get(key, day) or (survey.only and part.name != survey.only[1]):
             continue
         if (
             not survey.only
@@ -128,7 +139,7 @@ def read_points(vessel: Vessel, survey: Survey) -> Iterator[Row]:
             and part.name == vessel.new_metal[1]
         ):
             continue  # read four days before, when the new course was in
-        if (*key, point.index) == WITHDRAWN[:3] and day > WITHDRAWN[3]:
+        if key == WITHDRAWN[:3] and day > WITHDRAWN[3]:
             continue
         rng = noise(vessel.tag, point.location, start)
         error = part.noise * float(np.clip(rng.normal(), -2, 2))

@@ -97,7 +97,12 @@ def _fill(engine: Engine) -> dict[str, int]:
         [ids["relief"]] = add(
             models.Entity, [{"kind": "relief device", "parent_id": ids["vessel"], "tag": "PSV-1"}]
         )
-        vessel = {"rules": "api510", "design_code": "asme8-1", "in_service_on": day, "design_pressure_mpa": 1.0}
+        vessel = {
+            "rules": "api510",
+            "design_code": "asme8-1",
+            "in_service_on": day,
+            "design_pressure_mpa": 1.0,
+        }
         of_vessel = {"vessel_id": ids["vessel"]}
         since = {"valid_from": day}
         add(models.Vessel, [{"entity_id": ids["vessel"], **since, **vessel, "service": "Ammoniak, größer"}])
@@ -106,13 +111,21 @@ def _fill(engine: Engine) -> dict[str, int]:
             models.Location,
             [{"entity_id": ids[name], **since, "part_id": ids["part"]} for name in ("location", "other")],
         )
-        add(models.ReliefDevice, [{"entity_id": ids["relief"], **since, **of_vessel, "set_pressure_mpa": 1.1}])
+        add(
+            models.ReliefDevice, [{"entity_id": ids["relief"], **since, **of_vessel, "set_pressure_mpa": 1.1}]
+        )
         add(models.DatedState, [{"subject_id": ids["vessel"], "state": "in service", "from_on": day}])
         add(models.Inspection, [{**of_vessel, "kind": "internal", "done_on": day, "extent": "full"}])
         add(models.Setting, [{"key": "reading error", "value": "0.25 mm", "from_on": day}])
     with writer(engine, task="survey load", by="B. Stern") as entry:
         add = entry.add
-        file = {"name": "north.csv", "sha256": "ab" * 32, "kind": "readings", "rows_loaded": 3, "rows_parked": 1}
+        file = {
+            "name": "north.csv",
+            "sha256": "ab" * 32,
+            "kind": "readings",
+            "rows_loaded": 3,
+            "rows_parked": 1,
+        }
         [ids["file"]] = add(models.SourceFile, [file])
         parked = {"source_file_id": ids["file"], "row_no": 7, "content": {"location": "9"}, "faults": []}
         add(models.ParkedRow, [parked])
@@ -126,7 +139,12 @@ def _fill(engine: Engine) -> dict[str, int]:
                 for at, wall in walls
             ],
         )
-        notice = {"code": "apparent gain", "where_text": "north.csv:E3", "found": "0.6 mm", "remedy": "re-take it"}
+        notice = {
+            "code": "apparent gain",
+            "where_text": "north.csv:E3",
+            "found": "0.6 mm",
+            "remedy": "re-take it",
+        }
         add(models.Doubt, [{**notice, "reading_id": ids["reading"], "status": "open"}])
     with writer(engine, task="decide", by="A. Keel", role="engineer", why="new course") as entry:
         add = entry.add

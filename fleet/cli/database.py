@@ -34,7 +34,7 @@ def add_to(app: typer.Typer) -> None:
 
 def demo(
     folder: Annotated[
-        Path, typer.Argument(metavar="[FOLDER]", help="where to build it; it must hold no demo yet")
+        Path, typer.Argument(metavar="FOLDER", help="where to build it; it must hold no demo yet")
     ] = Path("brackwater"),
     units: Units = "si",
     as_json: AsJson = False,

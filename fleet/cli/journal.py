@@ -32,7 +32,7 @@ def add_to(app: typer.Typer) -> None:
 
 def show(
     tag: Annotated[
-        str | None, typer.Argument(metavar="[TAG]", help="only entries that wrote about this vessel")
+        str | None, typer.Argument(metavar="TAG", help="only entries that wrote about this vessel")
     ] = None,
     database: Database = DEFAULT_DATABASE,
     as_json: AsJson = False,

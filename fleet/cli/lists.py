@@ -44,9 +44,7 @@ def add_to(app: typer.Typer) -> None:
 
 
 def appraise(
-    tags: Annotated[
-        list[str] | None, typer.Argument(metavar="[TAG]...", help="vessels; all without one")
-    ] = None,
+    tags: Annotated[list[str] | None, typer.Argument(metavar="TAG", help="vessels; all without one")] = None,
     as_of: AsOf = None,
     known_at: KnownAt = None,
     carry_to: CarryTo = None,

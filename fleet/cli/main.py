@@ -1,4 +1,7 @@
-"""The command ``fleet``: its first screen, its commands, and the one place where errors become text and exit codes."""
+"""The command ``fleet``: its first screen, its commands, and the one place where errors become text.
+
+Every exception carries its exit code; `run` prints its three parts and ends the process with that code.
+"""
 
 from __future__ import annotations
 
@@ -70,7 +73,7 @@ def run(arguments: Sequence[str] | None = None) -> None:
     except BrokenPipeError:
         sys.stdout = open(os.devnull, "w", encoding="utf-8")  # noqa: SIM115, PTH123  # the reader left: nothing more to say
         raise SystemExit(0) from None
-    except Exception as problem:  # noqa: BLE001  # the last net: whatever else happens is told in three parts
+    except Exception as problem:  # the last net: whatever else happens is told in three parts
         if os.environ.get("FLEET_DEBUG"):
             raise
         _end(_translated(problem))

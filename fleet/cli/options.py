@@ -38,12 +38,10 @@ def read_day(text: str) -> date:
     >>> read_day("2026-12-01")
     datetime.date(2026, 12, 1)
     """
-    try:
-        if not _DAY.fullmatch(text.strip()):
-            raise ValueError(text)
-        return date.fromisoformat(text.strip())
-    except ValueError:
-        raise typer.BadParameter(f"{text!r} is not a date; write it as 2026-12-01") from None
+    found = _day(text)
+    if found is None:
+        raise typer.BadParameter(f"{text!r} is not a date; write it as 2026-12-01")
+    return found
 
 
 def read_moment(text: str) -> datetime:
@@ -71,15 +69,26 @@ def read_moment(text: str) -> datetime:
     >>> read_moment("2026-12-01").isoformat()
     '2026-12-01T23:59:59.999999+00:00'
     """
+    day = _day(text)
+    if day is not None:
+        return datetime.combine(day, time.max, tzinfo=UTC)
     try:
-        if _DAY.fullmatch(text.strip()):
-            return datetime.combine(date.fromisoformat(text.strip()), time.max, tzinfo=UTC)
         moment = datetime.fromisoformat(text.strip())
     except ValueError:
         raise typer.BadParameter(
             f"{text!r} is neither a date nor a time; write 2026-12-01 or 2026-12-01T08:30:00"
         ) from None
     return moment.replace(tzinfo=UTC) if moment.tzinfo is None else moment.astimezone(UTC)
+
+
+def _day(text: str) -> date | None:
+    """Read a date in its one accepted form; `date.fromisoformat` alone takes several."""
+    if not _DAY.fullmatch(text.strip()):
+        return None
+    try:
+        return date.fromisoformat(text.strip())
+    except ValueError:
+        return None
 
 
 def read_units(text: str) -> str:

@@ -65,8 +65,8 @@ def load(
 ) -> None:
     """Load vessels, parts, locations, relief devices and inspections from CSV files or workbooks.
 
-    The files of one command are checked together and loaded together, or not at all. A row that says what is on
-    record already writes nothing.
+    The files of one command are checked together; each is loaded as a whole or not at all. A row that says what
+    is on record already writes nothing.
 
     Example:  fleet register load register.xlsx --dry-run
     """
@@ -84,9 +84,12 @@ def load(
     )
     if as_json:
         output.show(loaded.as_json())
-    elif loaded.refused is None:
+    else:
         output.say(loaded.sentence())
-        for text in (output.notices(loaded.faults, "Left waiting"), output.notices(loaded.doubts, "Doubts")):
+        for text in (
+            output.notices(loaded.waiting, "Left waiting"),
+            output.notices(loaded.doubts_of_loaded, "Doubts"),
+        ):
             if text:
                 output.say(text)
     if loaded.refused is not None:

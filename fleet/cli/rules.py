@@ -36,7 +36,7 @@ def _only_subcommands() -> None:
 
 def show(
     name: Annotated[
-        str | None, typer.Argument(metavar="[NAME]", help="rule set; all are named without it")
+        str | None, typer.Argument(metavar="NAME", help="rule set; all are named without it")
     ] = None,
     as_json: AsJson = False,
 ) -> None:

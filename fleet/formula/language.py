@@ -56,7 +56,28 @@ def _function_name(node: ast.expr, names: Mapping[str, Any]) -> str:
 
 
 def normal(node: ast.expr, place: str, arguments: Iterable[str], names: Mapping[str, Any]) -> ast.expr:
-    """Copy the expression with every call by its plain name; refuse what the small language does not have."""
+    """Copy an expression with every call by its plain name; refuse what the small language does not have.
+
+    Parameters
+    ----------
+    node : ast.expr
+        The expression as written [-].
+    place : str
+        What to name in a refusal [text].
+    arguments : iterable of str
+        The names it may use [text].
+    names : mapping
+        What the names of its module stand for [-].
+
+    Returns
+    -------
+    ast.expr
+
+    Raises
+    ------
+    OurFault
+        If it holds anything else.
+    """
     if isinstance(node, ast.Constant) and type(node.value) in {int, float} and "inf" not in repr(node.value):
         return node
     if isinstance(node, ast.Name) and node.id in arguments:
@@ -87,7 +108,28 @@ def normal(node: ast.expr, place: str, arguments: Iterable[str], names: Mapping[
 
 
 def comparison(node: ast.expr, place: str, arguments: Iterable[str], names: Mapping[str, Any]) -> ast.Compare:
-    """Copy one comparison of two expressions."""
+    """Copy one comparison of two expressions.
+
+    Parameters
+    ----------
+    node : ast.expr
+        The comparison as written [-].
+    place : str
+        What to name in a refusal [text].
+    arguments : iterable of str
+        The names it may use [text].
+    names : mapping
+        What the names of its module stand for [-].
+
+    Returns
+    -------
+    ast.Compare
+
+    Raises
+    ------
+    OurFault
+        If it is anything else.
+    """
     if not (isinstance(node, ast.Compare) and len(node.ops) == 1 and type(node.ops[0]) in OPERATORS):
         raise OurFault(place, f"'{ast.unparse(node)}' is not one comparison", "write one of < <= > >=")
     sides = [normal(side, place, arguments, names) for side in (node.left, node.comparators[0])]
@@ -95,13 +137,35 @@ def comparison(node: ast.expr, place: str, arguments: Iterable[str], names: Mapp
 
 
 def names_in(node: ast.expr) -> tuple[str, ...]:
-    """Give the quantities of an expression in order of first appearance."""
+    """Give the quantities of an expression in order of first appearance.
+
+    Parameters
+    ----------
+    node : ast.expr
+        An expression of the small language [-].
+
+    Returns
+    -------
+    tuple of str
+    """
     found = [each.id for each in ast.walk(node) if isinstance(each, ast.Name)]
     return tuple(dict.fromkeys(name for name in found if name not in FUNCTIONS))
 
 
 def evaluated(node: ast.expr, values: Mapping[str, Any]) -> Any:  # number, array or truth
-    """Work an expression of the small language out."""
+    """Work an expression of the small language out.
+
+    Parameters
+    ----------
+    node : ast.expr
+        An expression of the small language [-].
+    values : mapping
+        A number or array for every quantity in it [-].
+
+    Returns
+    -------
+    float, bool or array
+    """
     if isinstance(node, ast.Constant):
         return node.value
     if isinstance(node, ast.Name):

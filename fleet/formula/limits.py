@@ -49,7 +49,17 @@ class Limit:
         return Dialect(False, {name: typographic(name) for name in self.names}).expression(self.tree)[0]
 
     def broken(self, values: Mapping[str, Num]) -> NDArray[np.bool_]:
-        """Say where the condition fails; a missing or unknown (NaN) quantity never breaks it."""
+        """Say where the condition fails; a missing or unknown (NaN) quantity never breaks it.
+
+        Parameters
+        ----------
+        values : mapping
+            A number or array for every quantity it speaks of, and others [-].
+
+        Returns
+        -------
+        array of bool
+        """
         if any(name not in values for name in self.names):
             return np.zeros(1, dtype=np.bool_)
         arrays = {name: np.atleast_1d(np.asarray(values[name], dtype=np.float64)) for name in self.names}

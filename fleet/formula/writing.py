@@ -29,26 +29,74 @@ _SIGNS: dict[type[ast.AST], str] = {ast.Lt: "<", ast.LtE: "<=", ast.Gt: ">", ast
 
 
 def typographic(name: str) -> str:
-    """Write a name as an engineer would: ``sigma_h`` as σ_h."""
+    """Write a name as an engineer would.
+
+    Parameters
+    ----------
+    name : str
+        A name of Python [text].
+
+    Returns
+    -------
+    str
+
+    Examples
+    --------
+    >>> typographic("sigma_h"), typographic("Ro")
+    ('σ_h', 'Ro')
+    """
     head, _, tail = name.partition("_") if name not in _GREEK else (name, "", "")
     return _GREEK.get(head, head) + (f"_{tail}" if tail else "")
 
 
 def number(value: float) -> str:
-    """Write a number so that reading it back gives the same number."""
+    """Write a number so that reading it back gives the same number.
+
+    Parameters
+    ----------
+    value : float
+        The number [-].
+
+    Returns
+    -------
+    str
+
+    Examples
+    --------
+    >>> number(600.0), number(0.1), number(9.807e-6)
+    ('600', '0.1', '9.807E-06')
+    """
     text = repr(float(value)).removesuffix(".0")
     return text.upper()
 
 
 @dataclass(frozen=True)
 class Dialect:
-    """How operators, functions and names are written, for a reader or for a spreadsheet."""
+    """How operators, functions and names are written, for a reader or for a spreadsheet.
+
+    Parameters
+    ----------
+    sheet : bool
+        Whether a spreadsheet reads it [-].
+    values : mapping of str to str
+        What stands for each name [text].
+    """
 
     sheet: bool
     values: Mapping[str, str]
 
     def expression(self, node: ast.expr) -> tuple[str, int]:  # noqa: PLR0911  # one for each kind of node
-        """Write a node and say how tightly it binds."""
+        """Write an expression and say how tightly it binds.
+
+        Parameters
+        ----------
+        node : ast.expr
+            An expression of the small language [-].
+
+        Returns
+        -------
+        tuple of str and int
+        """
         if isinstance(node, ast.Constant):
             return number(cast("float", node.value)), _ATOM
         if isinstance(node, ast.Name):
@@ -71,12 +119,34 @@ class Dialect:
         return self.call(cast("ast.Call", node))
 
     def inside(self, node: ast.expr, least: int) -> str:
-        """Write a node, in brackets if it binds less tightly than `least`."""
+        """Write an expression, in brackets if it binds less tightly than it must.
+
+        Parameters
+        ----------
+        node : ast.expr
+            An expression of the small language [-].
+        least : int
+            How tightly it must bind [-].
+
+        Returns
+        -------
+        str
+        """
         text, level = self.expression(node)
         return text if level >= least else f"({text})"
 
     def operation(self, node: ast.BinOp) -> tuple[str, int]:
-        """Write a sum, product, quotient or power with the brackets that both ways of reading need."""
+        """Write a sum, product, quotient or power with the brackets that both ways of reading need.
+
+        Parameters
+        ----------
+        node : ast.BinOp
+            The operation [-].
+
+        Returns
+        -------
+        tuple of str and int
+        """
         left, right = node.left, node.right
         keep = 1 if self.sheet else 0  # a spreadsheet must add and multiply in our order
         if isinstance(node.op, ast.Add):
@@ -92,14 +162,34 @@ class Dialect:
         return self.raised(left, right)
 
     def raised(self, base: ast.expr, exponent: ast.expr) -> tuple[str, int]:
-        """Write a power; whole powers stand raised in print."""
+        """Write a power; whole powers stand raised in print.
+
+        Parameters
+        ----------
+        base, exponent : ast.expr
+            Its two sides [-].
+
+        Returns
+        -------
+        tuple of str and int
+        """
         power_text = self.inside(exponent, _ATOM)
         if self.sheet or power_text not in {"2", "3"}:
             return f"{self.inside(base, _ATOM)}^{power_text}", _POWER
         return self.inside(base, _ATOM) + {"2": "²", "3": "³"}[power_text], _POWER
 
     def call(self, node: ast.Call) -> tuple[str, int]:
-        """Write a function."""
+        """Write a function.
+
+        Parameters
+        ----------
+        node : ast.Call
+            The call [-].
+
+        Returns
+        -------
+        tuple of str and int
+        """
         name = cast("ast.Name", node.func).id
         if name in {"square", "power"}:
             return self.raised(node.args[0], node.args[1] if name == "power" else ast.Constant(2))
@@ -116,7 +206,17 @@ class Dialect:
 
 
 def symbolic(node: ast.expr) -> Any:  # noqa: PLR0911  # one for each kind of node; a sympy expression; sympy carries no types
-    """Build the sympy expression of positive symbols, its numbers exact."""
+    """Build the sympy expression of positive symbols, its numbers exact.
+
+    Parameters
+    ----------
+    node : ast.expr
+        An expression of the small language [-].
+
+    Returns
+    -------
+    sympy.Expr
+    """
     import sympy  # noqa: PLC0415  # a development tool: nothing else of fleet needs it
 
     if isinstance(node, ast.Constant):

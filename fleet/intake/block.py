@@ -12,12 +12,15 @@ from numpy.typing import NDArray
 
 from fleet import words
 from fleet.intake.headings import Layout
+from fleet.intake.known import LocationKey
 from fleet.intake.results import ParkedRow, Row, Value
 from fleet.intake.sheets import Cell, Place, is_blank, show
 from fleet.intake.tables import Column
 from fleet.words import Notice
 
 Floats = NDArray[np.float64]
+
+_MAY_HIDE_A_COLUMN = frozenset({"unknown column", "merged header", "error cell", "formula without value"})
 
 
 @dataclass
@@ -52,6 +55,8 @@ class Block:
         Row to the reason for which it is to be queried [text].
     left_out : set
         Rows that say what is on record already [count].
+    added : dict
+        Field to texts filled in by a check, in place of those read [text].
     """
 
     table: str
@@ -69,6 +74,7 @@ class Block:
     table_doubts: list[tuple[int, Notice]] = field(default_factory=list)
     query: dict[int, str] = field(default_factory=dict)
     left_out: set[int] = field(default_factory=set)
+    added: dict[str, list[str]] = field(default_factory=dict)
 
     def __len__(self) -> int:
         return len(self.row_nos)
@@ -178,7 +184,9 @@ class Block:
             The row, counted from 0 [count].
         """
         heading = self.layout.headings.get(name)
-        return (heading is not None and not heading.readable) or row in self.unread.get(name, ())
+        if heading is None:  # it may be the column whose heading could not be understood
+            return any(notice.code in _MAY_HIDE_A_COLUMN for _, notice in self.layout.faults)
+        return not heading.readable or row in self.unread.get(name, ())
 
     def written(self, name: str, row: int) -> str:
         """Give number and unit of a cell as written; empty where it is blank or has no unit.
@@ -212,8 +220,10 @@ class Block:
             The rows, counted from 0 [count].
         """
         columns = [heading.column for heading in self.layout.headings.values() if heading.readable]
-        fields = [column.field for column in columns]
-        values = [self._values(column) for column in columns]
+        fields = [column.field for column in columns if column.field not in self.added]
+        values = [self._values(column) for column in columns if column.field not in self.added]
+        fields += list(self.added)
+        values += [[text or None for text in texts] for texts in self.added.values()]
         physical = [heading for heading in self.layout.headings.values() if heading.unit is not None]
         rows = []
         for row in which:
@@ -265,6 +275,40 @@ class Block:
         return ParkedRow(
             self.table, self.place.file, self.place.sheet, number, self.place.row(number), content, faults
         )
+
+
+@dataclass(frozen=True)
+class Keys:
+    """Location and day of each row of a table of readings.
+
+    Parameters
+    ----------
+    locations : list
+        Vessel, part and location; None where one of them cannot be read [text].
+    days : list
+        The day; None where it cannot be read [date].
+    """
+
+    locations: list[LocationKey | None]
+    days: list[dt.date | None]
+
+
+def read_keys(block: Block) -> Keys:
+    """Read location and day of each row.
+
+    Parameters
+    ----------
+    block : Block
+        A table of readings [-].
+
+    Returns
+    -------
+    Keys
+        Its keys [-].
+    """
+    columns = zip(block.text("vessel"), block.text("part"), block.text("location"), strict=True)
+    locations: list[LocationKey | None] = [key if all(key) else None for key in columns]
+    return Keys(locations, block.date("taken_on"))
 
 
 def _in_order(

@@ -76,9 +76,10 @@ def against_nominal(
 
     Notes
     -----
-    Far outside: above 1.25·(nominal + lining) or below 0.2·nominal; without nominal, the same of the last reading.
-    The reading would fit in another unit where it then lies between 0.2 times nominal and 1.25 times nominal and
-    lining, or between 0.2 and 1.25 times the last reading. Of two units that fit, the one nearer to nominal.
+    Far outside: above 1.25·(nominal + lining) or below 0.2·nominal; without nominal, the same of the last
+    reading. The reading would fit in another unit where it then lies between 0.2 times nominal and 1.25 times
+    nominal and lining, or between 0.2 and 1.25 times the last reading. Of two units that fit, the one nearer
+    to nominal.
     """
     highest = FAR_ABOVE * (nominal_mm + lining_mm)
     with np.errstate(invalid="ignore"):
@@ -170,9 +171,9 @@ def against_history(
 
     Notes
     -----
-    Gain: t − t_last > 3·√2·s. Loss: t_last − t > 3·√2·s and > 5·rate·span, where rate is (t_first − t_last) over
-    their span, and not below 0. It needs two earlier observations: first and last reading further apart than
-    `same_observation_days`, or by more than 3·√2·s.
+    Gain: t − t_last > 3·√2·s. Loss: t_last − t > 3·√2·s and > 5·rate·span, where rate is (t_first − t_last)
+    over their span, and not below 0. It needs two earlier observations: first and last reading further apart
+    than `same_observation_days`, or by more than 3·√2·s.
     """
     count = len(place)
     order = np.lexsort((day, place))

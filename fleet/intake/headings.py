@@ -239,7 +239,9 @@ def _layout(sheet: Sheet, table: str, header: int) -> Layout:
 def _heading(table: str, cell: Cell, index: int, where: str) -> tuple[Heading | None, Notice | None]:
     text = show(cell)
     name, unit_text = split_heading(text)
-    column = next((one for one in tables.TABLES[table] if one.name == name), None)
+    by_name = {column.name: column for column in tables.TABLES[table]}
+    # 'thickness (mm)' means the thickness; round brackets are no unit, but the column is not lost
+    column = by_name.get(name) or by_name.get(re.sub(r"_*\([^()]*\)$", "", name))
     if column is None:
         return None, _unknown_column(table, name, text, where)
     if column.quantity is None:
@@ -267,14 +269,7 @@ _EXAMPLE_UNITS = {"length": "mm", "pressure": "MPa", "temperature": "degC", "rat
 
 
 def _unknown_column(table: str, name: str, text: str, where: str) -> Notice:
-    bare = re.sub(r"_*\(.*?\)$", "", name)  # 'thickness (mm)' means the thickness
-    near = tables.nearest(bare, _NAMES[table])
-    if near == bare:
-        column = tables.column(table, bare)
-        if column.quantity is not None:
-            heading = column.heading(_EXAMPLE_UNITS[column.quantity])
-            remedy = f"write the unit in square brackets in the header, for instance '{heading}'"
-            return words.notice("missing unit", where, f"'{text}'", remedy)
+    near = tables.nearest(name, _NAMES[table])
     hint = f"did you mean '{near}'? Otherwise delete the column" if near else None
     return words.notice("unknown column", where, f"'{text}' is not a column of table '{table}'", hint)
 

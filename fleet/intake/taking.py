@@ -1,9 +1,9 @@
-"""What register and surveys have in common: open the files, find their tables, give back what may be loaded."""
+"""What register and surveys have in common: open files, find their tables, give back what may be loaded."""
 
 from __future__ import annotations
 
 import hashlib
-from collections.abc import Collection, Sequence
+from collections.abc import Collection, Mapping, Sequence
 from dataclasses import dataclass, field
 from pathlib import Path
 
@@ -55,7 +55,7 @@ class FileTaken:
         return FileIn(self.name, self.sha256, refused, bool(self.loaded_as))
 
 
-def take_in(path: str | Path, wanted: Collection[str], loaded: object = None) -> FileTaken:
+def take_in(path: str | Path, wanted: Collection[str], loaded: Mapping[str, str] | None = None) -> FileTaken:
     """Open a file and parse the tables that are wanted.
 
     Parameters
@@ -77,13 +77,12 @@ def take_in(path: str | Path, wanted: Collection[str], loaded: object = None) ->
     Refused
         Where the file cannot be opened at all.
     """
-    known: dict[str, str] = dict(loaded) if isinstance(loaded, dict) else {}
     try:
         book = read_file(path)
     except errors.FileRefused as refused:
         digest = hashlib.sha256(Path(path).read_bytes()).hexdigest()
         return FileTaken(Path(path).name, digest, faults=list(refused.faults))
-    taken = FileTaken(book.file, book.sha256, loaded_as=known.get(book.sha256, ""))
+    taken = FileTaken(book.file, book.sha256, loaded_as=(loaded or {}).get(book.sha256, ""))
     passed_over = _find_tables(taken, book, wanted)
     if not taken.blocks and not taken.faults:
         found = "; ".join(notice.found for notice in passed_over)
@@ -167,11 +166,8 @@ def sort_rows(files: Sequence[FileTaken], refused: Collection[int], *, park: boo
         if number in refused or file.loaded_as:
             continue
         for block in file.blocks:
-            good = [
-                row
-                for row in range(len(block))
-                if row not in block.row_faults | dict.fromkeys(block.left_out)
-            ]
+            left = block.left_out | block.row_faults.keys()
+            good = [row for row in range(len(block)) if row not in left]
             place = block.place
             result.tables.append(Typed(block.table, place.file, place.sheet, tuple(block.typed_rows(good))))
             if park:

@@ -1,4 +1,4 @@
-"""Tell every reading at or below its alert or required thickness, whatever else is the matter with its file."""
+"""Tell every reading at or below its alert or required thickness, whatever else is wrong with its file."""
 
 from __future__ import annotations
 
@@ -27,8 +27,9 @@ def thin_readings(block: Block, known: KnownRegister) -> list[dict[str, Any]]:
 
     Notes
     -----
-    The wall compared is the lesser of thickness and average, less a lining that does not count in strength unless
-    the reading is said not to include it. A location that is not on record is held against the figures of its part.
+    The wall compared is the lesser of thickness and average, less a lining that does not count in strength,
+    unless the reading is said not to include it. A location that is not on record is held against the figures
+    of its part.
     """
     thickness, average = block.number("thickness"), block.number("average")
     vessels, parts, locations = block.text("vessel"), block.text("part"), block.text("location")

@@ -80,6 +80,31 @@ class Geometry:
                 self, field.name, np.atleast_1d(np.asarray(getattr(self, field.name), dtype=kind))
             )
 
+    @classmethod
+    def build(cls, count: int, **given: object) -> Geometry:
+        """Build rows from what is given; the rest is blank.
+
+        Parameters
+        ----------
+        count : int
+            How many rows [count].
+        **given : float, str or array
+            Fields by name, one value for all rows or one a row [-].
+
+        Returns
+        -------
+        Geometry
+
+        Examples
+        --------
+        >>> rows = Geometry.build(2, design_code="asme8-1", shape="sphere", inside_diameter_mm=[9e3, 1e4])
+        >>> rows.shape.tolist(), rows.axis_ratio.tolist()
+        (['sphere', 'sphere'], [nan, nan])
+        """
+        blank: dict[str, object] = {field.name: np.nan for field in fields(cls)}
+        blank |= {"design_code": "", "shape": "", "loss_side": ""} | given
+        return cls(**{name: np.broadcast_to(np.asarray(value), (count,)) for name, value in blank.items()})
+
     def __len__(self) -> int:
         return len(self.shape)
 

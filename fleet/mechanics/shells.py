@@ -52,11 +52,33 @@ class Form:
         return "Ro" if self.radius == "Ro" else "R"
 
     def thin(self, direction: str) -> Formula:
-        """Give the thin form, ``pressure`` or ``thickness``."""
+        """Give the thin form.
+
+        Parameters
+        ----------
+        direction : str
+            ``pressure`` or ``thickness`` [text].
+
+        Returns
+        -------
+        Formula
+        """
         return REGISTER[f"{self.family}_{direction}{self.tail}"]
 
     def taking_over(self, direction: str, newer: bool) -> Formula:
-        """Give the thick form."""
+        """Give the thick form.
+
+        Parameters
+        ----------
+        direction : str
+            ``pressure`` or ``thickness`` [text].
+        newer : bool
+            Whether it is that of the newer editions [-].
+
+        Returns
+        -------
+        Formula
+        """
         edition = ("_newer" if newer else "_older") if self.by_edition else ""
         return REGISTER[f"{self.thick}_{direction}{self.tail}{edition}"]
 

@@ -16,6 +16,10 @@ GIVEN: dict[str, str] = {
 """What a required thickness rests on where no formula sets it [text]."""
 
 
+AXIAL = "_axial_"
+"""What the register writes into the names of formulas for the axial direction [text]."""
+
+
 def cited(name: str) -> str:
     """Cite a formula with its status, unless that is `confirmed`.
 
@@ -59,7 +63,9 @@ def required_rests_on(part: PartView, required_by: str | None) -> str:
         return ""
     if required_by in GIVEN:
         return GIVEN[required_by]
-    return listed(_giving(part.formulas, "mm") or part.formulas)
+    thickness = _giving(part.formulas, "mm")
+    of_direction = [name for name in thickness if (AXIAL in name) == (required_by == "axial")]
+    return listed(of_direction or thickness or part.formulas)
 
 
 def pressure_rests_on(part: PartView) -> str:
@@ -74,7 +80,7 @@ def pressure_rests_on(part: PartView) -> str:
     -------
     str
     """
-    return listed(_giving(part.formulas, "MPa") or part.formulas)
+    return listed(_giving(with_inverses(part.formulas), "MPa") or part.formulas)
 
 
 def listed(names: Iterable[str]) -> str:
@@ -105,7 +111,30 @@ def formulas_of(views: Iterable[VesselView]) -> list[str]:
     list of str
         Names in the register of formulas, each once, in alphabetical order.
     """
-    return sorted({name for view in views for part in view.parts for name in part.formulas})
+    return sorted({name for view in views for part in view.parts for name in with_inverses(part.formulas)})
+
+
+def with_inverses(names: Iterable[str]) -> list[str]:
+    """Add to each formula for a thickness the one for a pressure that is its inverse, and the other way round.
+
+    Parameters
+    ----------
+    names : iterable of str
+        Names in the register of formulas [text].
+
+    Returns
+    -------
+    list of str
+        The register names the two alike but for the quantity they give.
+    """
+    found: dict[str, None] = {}
+    for name in names:
+        found[name] = None
+        for one, other in (("_thickness", "_pressure"), ("_pressure", "_thickness")):
+            inverse = name.replace(one, other)
+            if inverse != name and inverse in formula.REGISTER:
+                found[inverse] = None
+    return list(found)
 
 
 def _giving(names: Sequence[str], unit: str) -> list[str]:

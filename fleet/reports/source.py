@@ -85,6 +85,33 @@ class RuleValueLike(Protocol):
         """How well it is known."""
 
 
+class Snapshot:
+    """An appraisal whose views are made once, for a report that goes through them many times.
+
+    Parameters
+    ----------
+    appraisal : AppraisalLike
+        The appraisal [-].
+    """
+
+    def __init__(self, appraisal: AppraisalLike) -> None:
+        self.as_of = appraisal.as_of
+        self.journal_head = appraisal.journal_head
+        self.journal_no = appraisal.journal_no
+        self.count = appraisal.count
+        self.list_end_on = appraisal.list_end_on
+        self._views = appraisal.views()
+        self._appraisal = appraisal
+
+    def views(self) -> tuple[VesselView, ...]:
+        """Give every vessel, in the order of the register."""
+        return self._views
+
+    def timetable(self, years: int = 10) -> TimetableLike:
+        """Give the pressures carried over the coming years."""
+        return self._appraisal.timetable(years)
+
+
 @dataclass(frozen=True)
 class Grounds:
     """What stands behind a list beyond its vessels: printed on the last sheet.

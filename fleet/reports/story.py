@@ -8,6 +8,7 @@ from dataclasses import dataclass
 from fleet import words
 from fleet.appraisal.views import ReliefView, VesselView
 from fleet.reports.figures import Figures
+from fleet.reports.reason import telling_place
 from fleet.reports.source import AppraisalLike, reconciled
 
 NAMED = 6
@@ -222,7 +223,7 @@ def _walls(sorted_in: dict[str, list[VesselView]]) -> list[str]:
 
 def _relief_above(serving: Sequence[VesselView], figures: Figures) -> list[Sentence]:
     return [
-        Sentence(f"On {view.vessel} {sentence.text}", relief_above_today=True)
+        Sentence(f"On {view.vessel}, {sentence.text}", relief_above_today=True)
         for view in serving
         for sentence in relief_sentences(view, figures)
         if sentence.relief_above_today
@@ -235,8 +236,10 @@ def _ratings(sorted_in: dict[str, list[VesselView]], figures: Figures) -> list[s
     if members:
         each = [_shortfall(view, figures) for view in members[:NAMED]]
         more = f"; and {len(members) - NAMED} more" if len(members) > NAMED else ""
-        lose = "loses" if len(members) == 1 else "lose"
-        told.append(f"{_count(len(members))} {lose} rating by the carry-to date: {'; '.join(each)}{more}.")
+        fall = "falls" if len(members) == 1 else "fall"
+        told.append(
+            f"{_count(len(members))} {fall} short of the rating by the carry-to date: {'; '.join(each)}{more}."
+        )
     unknown = sorted_in[words.NO_VERDICT]
     if unknown:
         get = "gets" if len(unknown) == 1 else "get"
@@ -248,12 +251,13 @@ def _ratings(sorted_in: dict[str, list[VesselView]], figures: Figures) -> list[s
 
 
 def _shortfall(view: VesselView, figures: Figures) -> str:
-    if view.projected_mawp_mpa is None or view.current_mawp_mpa is None or view.carry_to_on is None:
+    now, then, day = view.current_mawp_mpa, view.projected_mawp_mpa, view.carry_to_on
+    if day is None:
         return view.vessel
-    now, then = figures.carries(view.current_mawp_mpa), figures.carries(view.projected_mawp_mpa)
-    return (
-        f"{view.vessel} from {now} to {figures.with_unit(then, 'pressure')} by {view.carry_to_on.isoformat()}"
-    )
+    if now is None or then is None or not then < now:
+        return f"{view.vessel}, whose wall is below the required thickness on {day.isoformat()}"
+    carried = figures.with_unit(figures.carries(then), "pressure")
+    return f"{view.vessel} from {figures.carries(now)} to {carried} by {day.isoformat()}"
 
 
 def _later(
@@ -280,8 +284,9 @@ def _later(
     if soon:
         first_few = [text for _, text in sorted(soon)[:NAMED]]
         more = f"; and {len(soon) - NAMED} more" if len(soon) > NAMED else ""
+        are = "is" if len(soon) == 1 else "are"
         told.append(
-            f"{len(soon)} relief device{_s(soon)} to be reset before {appraisal.list_end_on.isoformat()}, "
+            f"{len(soon)} relief device{_s(soon)} {are} to be reset before {appraisal.list_end_on.isoformat()}, "
             f"the end of this list: {'; '.join(first_few)}{more}."
         )
     overdue = [view for view in serving if words.OVERDUE in view.flags]
@@ -296,9 +301,9 @@ def _aside(sorted_in: dict[str, list[VesselView]]) -> list[str]:
     told = []
     again = sorted_in[words.RE_GAUGE]
     if again:
-        stand = "stands" if len(again) == 1 else "stand"
+        stand = "stands or falls" if len(again) == 1 else "stand or fall"
         told.append(
-            f"{_count(len(again))} {stand} or fall by a short-term rate that the reading error may explain "
+            f"{_count(len(again))} {stand} by a short-term rate that the reading error may explain "
             f"and must be gauged again: {_tags(again)}."
         )
     for block in (words.IDLE, words.OUT_OF_SERVICE, words.RETIRED):
@@ -320,7 +325,7 @@ def _open_points(views: Sequence[VesselView]) -> str:
 
 def _device(device: ReliefView, figures: Figures) -> str:
     pressure = figures.with_unit(figures.asked(device.set_pressure_mpa), "pressure")
-    return f"{device.device}, set at {pressure},"
+    return f"{device.device} ({pressure})"
 
 
 def _carries(view: VesselView, figures: Figures) -> str:
@@ -330,11 +335,8 @@ def _carries(view: VesselView, figures: Figures) -> str:
 
 
 def _places(members: Sequence[VesselView]) -> str:
-    each = [
-        view.vessel if view.governing_life is None else f"{view.vessel} ({view.governing_life})"
-        for view in members
-    ]
-    return _listed(each)
+    places = [(view.vessel, telling_place(view)) for view in members]
+    return _listed([tag if place is None else f"{tag} ({place})" for tag, place in places])
 
 
 def _tags(members: Sequence[VesselView]) -> str:

@@ -7,7 +7,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 from datetime import date, datetime
 
-from sqlalchemy import Connection, Engine
+from sqlalchemy import Engine
 
 import fleet
 from fleet.appraisal.appraise import Appraisal, appraise
@@ -17,9 +17,10 @@ from fleet.reports.source import Grounds
 from fleet.rules import RuleValue, load_rule_set
 from fleet.store import facts, journal, models
 from fleet.tasks import settings as levels
-from fleet.tasks.assemble import fetch_inputs, known_number
+from fleet.tasks.assemble import fetch_inputs
 from fleet.tasks.names import fetch_names
 from fleet.tasks.notices import waiting_rows
+from fleet.tasks.reader import Reader
 from fleet.words import Notice
 
 SETTING_UNITS = {
@@ -92,15 +93,15 @@ def appraise_fleet(
             "--carry-to", f"{carry_to} lies before the as-of date {as_of}", "give a date on or after it"
         )
     with engine.connect() as conn:
-        known = known_number(conn, known_at)
+        record = Reader.at(conn, as_of=as_of, known_at=known_at)
         if tags:
-            names = fetch_names(conn, known=known)
+            names = fetch_names(record)
             for tag in tags:
                 names.vessel(tag)
-        inputs = fetch_inputs(conn, as_of=as_of, known=known, tags=tags or None)
+        inputs = fetch_inputs(record, tags=tags or None)
         rule_sets = tuple(sorted({str(name) for name in inputs.vessels.rules}))
-        grounds = _grounds(conn, as_of=as_of, known=known, rule_sets=rule_sets)
-        waiting = tuple(one.notice for one in waiting_rows(conn, known=known) if one.vessel_id is None)
+        grounds = _grounds(record, rule_sets)
+        waiting = tuple(one.notice for one in waiting_rows(record) if one.vessel_id is None)
     return Appraised(appraise(inputs, as_of=as_of, carry_to=carry_to), grounds, waiting, carry_to)
 
 
@@ -216,9 +217,9 @@ def save_appraisal(engine: Engine, appraised: Appraised, *, name: str, by: str) 
         return int(entry.no)
 
 
-def _grounds(conn: Connection, *, as_of: date, known: int, rule_sets: tuple[str, ...]) -> Grounds:
-    in_force = levels.in_force(conn, as_of=as_of, known=known)
-    names = fetch_names(conn, known=known)
+def _grounds(record: Reader, rule_sets: tuple[str, ...]) -> Grounds:
+    in_force = levels.in_force(record)
+    names = fetch_names(record)
     choices = load_rule_set("choices")
     printed: list[tuple[str, str]] = []
     for key in levels.KEYS:

@@ -1,4 +1,4 @@
-"""Compare the rows of a register file with what is on record: what is new, what differs, what says nothing new."""
+"""Compare the rows of a register file with what is on record: what is new, what differs, what is the same."""
 
 from __future__ import annotations
 
@@ -9,12 +9,11 @@ from dataclasses import dataclass
 from datetime import date
 from typing import Any
 
-from sqlalchemy import Connection
-
 from fleet.intake.results import Intake, Row, Value
 from fleet.intake.tables import TABLES
-from fleet.store import facts, models
+from fleet.store import models
 from fleet.tasks.names import Names
+from fleet.tasks.reader import Reader
 
 BEGINNING = date(1, 1, 1)
 """The day from which the first row of an entity holds [date]."""
@@ -97,23 +96,17 @@ class Compared:
     rows: tuple[tuple[str, Path, bool, Row], ...]
 
 
-def compare(
-    conn: Connection, intake: Intake, *, names: Names, known: int, today: date, from_on: date | None
-) -> Compared:
+def compare(reader: Reader, intake: Intake, *, names: Names, from_on: date | None) -> Compared:
     """Compare the rows of a load with the record.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
+    reader : Reader
+        The record as of the day of the load [-].
     intake : Intake
         The typed rows [-].
     names : Names
         The entities on record [-].
-    known : int
-        Number of the last journal entry that was read [count].
-    today : date
-        The day of the load [date].
     from_on : date or None
         The day of a change; None for a correction of what holds today [date].
 
@@ -125,7 +118,7 @@ def compare(
     rows: list[tuple[str, Path, bool, Row]] = []
     unchanged = 0
     for table, kind in KINDS.items():
-        in_force = _in_force(conn, kind, known, from_on or today)
+        in_force = _in_force(reader, kind, from_on)
         for row in intake.rows(table):
             path = tuple(str(row.values[name]) for name in kind.names)
             entity = _entity(names, kind, path)
@@ -140,8 +133,10 @@ def compare(
     return Compared(tuple(changes), unchanged, tuple(rows))
 
 
-def _in_force(conn: Connection, kind: Kind, known: int, day: date) -> dict[int, dict[str, Any]]:
-    columns = facts.columns(conn, kind.model, known=known, as_of=day)
+def _in_force(reader: Reader, kind: Kind, from_on: date | None) -> dict[int, dict[str, Any]]:
+    """Give the row in force of every entity, on the day of the change or else on the day of the load."""
+    at = reader if from_on is None else Reader(reader.conn, as_of=from_on, known=reader.known)
+    columns = at.rows(kind.model)
     names = list(columns)
     rows = (dict(zip(names, values, strict=True)) for values in zip(*columns.values(), strict=True))
     return {row["entity_id"]: row for row in rows}
@@ -194,8 +189,8 @@ def _equal(one: Value, other: Value) -> bool:
 def _dating(before: Mapping[str, Any] | None, from_on: date | None) -> dict[str, Any]:
     """Say from when the row holds and what it replaces.
 
-    The first row of an entity holds from the beginning. A correction takes over the day of the row it replaces, and so
-    does a change on the very day on which that row began.
+    The first row of an entity holds from the beginning. A correction takes over the day of the row it replaces,
+    and so does a change on the very day on which that row began.
     """
     if before is None:
         return {"valid_from": BEGINNING}

@@ -1,4 +1,4 @@
-"""What every fetch has in common: the moment asked about, the register by index, columns cut to rows."""
+"""What every fetch has in common: the register by index, columns cut to rows."""
 
 from __future__ import annotations
 
@@ -8,29 +8,11 @@ from datetime import date
 from typing import Any
 
 import numpy as np
-from sqlalchemy import Connection
 
 from fleet.appraisal.inputs import Floats, Ints
-from fleet.store import facts, models
+from fleet.tasks.reader import Columns
 
-Columns = dict[str, list[Any]]
 Index = dict[int, int]
-
-
-@dataclass(frozen=True)
-class Moment:
-    """What may be known, and about which day.
-
-    Parameters
-    ----------
-    as_of : date
-        The day the figures are about [date].
-    known : int
-        Number of the last journal entry that may be read [count].
-    """
-
-    as_of: date
-    known: int
 
 
 @dataclass(frozen=True)
@@ -55,27 +37,6 @@ class Tree:
     location: Index
     part_vessel: Ints
     location_part: Ints
-
-
-def fetch(conn: Connection, model: type[models.Base], moment: Moment, *, dated: bool = False) -> Columns:
-    """Fetch the rows in force of a table, column by column.
-
-    Parameters
-    ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
-    model : type
-        The table [-].
-    moment : Moment
-        The day the figures are about and the last entry that may be read [-].
-    dated : bool
-        Whether it is a table of the register, of whose rows the as-of date chooses one [-].
-
-    Returns
-    -------
-    Columns
-    """
-    return facts.columns(conn, model, known=moment.known, as_of=moment.as_of if dated else None)
 
 
 def pick(columns: Columns, rows: Iterable[int]) -> Columns:

@@ -1,7 +1,7 @@
 """Record what happens to a vessel and what is decided about it: restarts, states, decisions, settings.
 
-Each function is one journal entry. Later facts never change earlier ones; what is in force on a day is chosen when an
-appraisal is assembled.
+Each function is one journal entry. Later facts never change earlier ones; what is in force on a day is chosen
+when an appraisal is assembled.
 """
 
 from __future__ import annotations
@@ -18,6 +18,7 @@ from fleet.intake.tables import ITEM_STATES, VESSEL_STATES
 from fleet.store import journal, models
 from fleet.store.record import DECISION_KINDS, RESTART_KINDS, RESTART_WHATS
 from fleet.tasks.names import Names, fetch_names
+from fleet.tasks.reader import Reader
 from fleet.tasks.settings import OF_THE_DATABASE_ONLY, checked_value
 
 _NEEDED: dict[str, tuple[str, ...]] = {
@@ -154,7 +155,7 @@ def set_state(
     vessel : str
         Tag of the vessel [text].
     state : str
-        The state: of a vessel one of the register's words; of a part or location in service or withdrawn [text].
+        The state: of a vessel one of the register's words, else in service or withdrawn [text].
     from_on : date
         The day from which it holds [date].
     reason, by : str
@@ -355,7 +356,7 @@ def _record(
 
 def _names(engine: Engine) -> Names:
     with engine.connect() as conn:
-        return fetch_names(conn, known=journal.head(conn).no)
+        return fetch_names(Reader.at(conn, as_of=date.max))
 
 
 def _subject(names: Names, vessel: str, part: str | None, location: str | None) -> int:

@@ -6,34 +6,31 @@ import json
 from collections.abc import Iterable, Sequence
 from typing import Any
 
-from sqlalchemy import Connection
-
 from fleet.intake.results import Intake, ParkedRow, Row
 from fleet.intake.tables import NAMED_BY
-from fleet.store import facts, journal, models
+from fleet.store import journal, models
+from fleet.tasks.reader import Reader
 
 Waiting = dict[str, Any]
 
 
-def waiting_on_record(conn: Connection, *, known: int) -> list[Waiting]:
+def waiting_on_record(record: Reader) -> list[Waiting]:
     """Fetch the rows that wait.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
-    known : int
-        Number of the last journal entry that may be read [count].
+    record : Reader
+        The record at the moment of the load [-].
 
     Returns
     -------
     list of dict
         Key, file name, sheet, row, content and faults of each.
     """
-    columns = facts.columns(conn, models.ParkedRow, known=known)
+    columns = record.rows(models.ParkedRow)
     if not columns["id"]:
         return []
-    files = facts.columns(conn, models.SourceFile, known=known, only=("id", "name"))
+    files = record.rows(models.SourceFile)
     name = dict(zip(files["id"], files["name"], strict=True))
     return [
         {
@@ -78,7 +75,7 @@ def new_parked(parked: Sequence[ParkedRow], waiting: Iterable[Waiting]) -> list[
 def settled(waiting: Sequence[Waiting], intake: Intake) -> list[Waiting]:
     """Find the waiting rows that this load brings in good order.
 
-    A row is settled by one of the same name, or by the same row of the same file with at most one name corrected.
+    A row is settled by one of the same name, or by the same row of the same file with one name corrected.
 
     Parameters
     ----------

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from datetime import date
 from typing import Any
 
 from sqlalchemy import Connection, Engine
@@ -11,6 +12,7 @@ from fleet.errors import CheckFailed
 from fleet.store import engine as engines
 from fleet.store import facts, guard, journal, models
 from fleet.tasks.names import fetch_names
+from fleet.tasks.reader import Reader
 
 
 def journal_entries(engine: Engine, tag: str | None = None) -> list[dict[str, Any]]:
@@ -52,7 +54,7 @@ def journal_entries(engine: Engine, tag: str | None = None) -> list[dict[str, An
 
 
 def _entries_about(conn: Connection, tag: str) -> set[int]:
-    names = fetch_names(conn, known=journal.head(conn).no)
+    names = fetch_names(Reader.at(conn, as_of=date.max))
     vessel = names.vessel(tag)
     entities = {vessel}
     grown = True
@@ -83,8 +85,8 @@ def journal_text(entries: list[dict[str, Any]]) -> str:
 
     Examples
     --------
-    >>> entry = {"no": 1, "at": "2026-12-01T08:00:00.000000+00:00", "by": "M. Okafor", "task": "register load"}
-    >>> entry |= {"role": None, "why": None, "wrote": {"vessel": 2}, "hash": "5f3c"}
+    >>> entry = {"no": 1, "at": "2026-12-01T08:00:00.000000+00:00", "by": "M. Okafor", "role": None}
+    >>> entry |= {"task": "register load", "why": None, "wrote": {"vessel": 2}, "hash": "5f3c"}
     >>> print(journal_text([entry]))
     1  2026-12-01 08:00:00 UTC  M. Okafor  register load
        wrote 2 vessel

@@ -6,12 +6,11 @@ from collections import defaultdict
 from collections.abc import Iterable
 from dataclasses import dataclass
 from datetime import date
-from typing import Any, Literal
+from typing import Literal
 
 import numpy as np
-from sqlalchemy import Connection
 
-from fleet.appraisal.inputs import DEFAULT_READING_ERROR_MM, Floats, Inputs
+from fleet.appraisal.inputs import DEFAULT_READING_ERROR_MM, DEFAULT_WINDOW_DAYS, Floats, Inputs
 from fleet.intake.known import (
     History,
     KnownLocation,
@@ -22,13 +21,15 @@ from fleet.intake.known import (
     PartKey,
     Recorded,
 )
-from fleet.store import facts, models
+from fleet.store import models
 from fleet.tasks import settings as levels
 from fleet.tasks.assemble import fetch_inputs
+from fleet.tasks.columns import by_day
 from fleet.tasks.names import Names, fetch_names
+from fleet.tasks.reader import Reader
+from fleet.tasks.record import re_ratings
 from fleet.tasks.starting import STARTING_BASIS
 
-Columns = dict[str, list[Any]]
 Standing = Literal["accepted", "queried", "voided", "past"]
 
 
@@ -38,8 +39,8 @@ class OnRecord:
 
     Parameters
     ----------
-    known : int
-        Number of the last journal entry that was read [count].
+    reader : Reader
+        The record at the moment of the load [-].
     inputs : Inputs
         The register and the record as arrays [-].
     names : Names
@@ -48,38 +49,30 @@ class OnRecord:
         The register as intake wants it [-].
     """
 
-    known: int
+    reader: Reader
     inputs: Inputs
     names: Names
     register: KnownRegister
 
 
-def fetch_on_record(
-    conn: Connection, *, known: int, today: date, required_mm: Floats | None = None
-) -> OnRecord:
+def fetch_on_record(reader: Reader, *, required: bool = False) -> OnRecord:
     """Fetch what a load is compared with.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
-    known : int
-        Number of the last journal entry that may be read [count].
-    today : date
-        The day of the load [date].
-    required_mm : Floats, optional
-        Required thickness per location, in the order of the inputs; unknown where absent [mm].
+    reader : Reader
+        The record as of the day of the load [-].
+    required : bool
+        Whether the required thickness of every location is wanted too [-].
 
     Returns
     -------
     OnRecord
     """
-    inputs = fetch_inputs(conn, as_of=today, known=known)
-    names = fetch_names(conn, known=known)
-    decisions = facts.columns(conn, models.Decision, known=known)
-    inspections = facts.columns(conn, models.Inspection, known=known)
-    readings = facts.columns(conn, models.Reading, known=known)
-    files = facts.columns(conn, models.SourceFile, known=known)
+    inputs = fetch_inputs(reader)
+    names = fetch_names(reader)
+    required_mm = required_thickness(inputs) if required else np.full(len(inputs.locations), np.nan)
+    inspections, files = reader.rows(models.Inspection), reader.rows(models.SourceFile)
     tag = {entity: key[2] for entity, key in names.tags.items()}
     done = [
         (tag[vessel], kind, day)
@@ -88,11 +81,9 @@ def fetch_on_record(
         )
     ]
     register = KnownRegister(
-        vessels=_vessels(inputs, _re_ratings(decisions, today, tag), done),
+        vessels=_vessels(inputs, _re_ratings(reader, tag), done),
         parts=_parts(inputs),
-        locations=_locations(
-            inputs, _baselines(names, readings), _errors(conn, known, today, inputs, names), required_mm
-        ),
+        locations=_locations(inputs, _baselines(reader, names), _errors(reader, inputs, names), required_mm),
         inspections=frozenset(done),
         files={
             digest: kind
@@ -100,7 +91,27 @@ def fetch_on_record(
             if parked == 0
         },
     )
-    return OnRecord(known, inputs, names, register)
+    return OnRecord(reader, inputs, names, register)
+
+
+def required_thickness(inputs: Inputs) -> Floats:
+    """Give the required thickness of every location, as far as what is on record lets it be known.
+
+    Parameters
+    ----------
+    inputs : Inputs
+        What an appraisal of the day is made from [-].
+
+    Returns
+    -------
+    Floats
+        In the order of the inputs' locations; NaN where nothing of it is known. A reading at or below what is
+        known of it is thin, whatever else is missing [mm].
+    """
+    from fleet.appraisal.required import needs, vessel_pressures
+
+    known: Floats = needs(inputs, vessel_pressures(inputs)).known_mm[: len(inputs.locations)]
+    return known
 
 
 def _number(value: float) -> float | None:
@@ -111,34 +122,22 @@ def _day(value: float) -> date | None:
     return None if np.isnan(value) else date.fromordinal(int(value))
 
 
-def _re_ratings(decisions: Columns, today: date, tag: dict[int, str]) -> dict[str, tuple[float, date, str]]:
+def _re_ratings(reader: Reader, tag: dict[int, str]) -> dict[str, tuple[float, date, str]]:
     """Give pressure, day and basis of the re-rating in force of each vessel."""
-    rows = sorted(
-        (
-            (
-                decisions["effective_on"][row] or decisions["decided_on"][row],
-                decisions["entry_no"][row],
-                decisions["id"][row],
-                row,
-            )
-            for row, kind in enumerate(decisions["kind"])
-            if kind == "re-rating"
-        ),
-    )
+    decisions = by_day(reader.rows(models.Decision), "decided_on", reader.as_of)
     return {
         tag[decisions["vessel_id"][row]]: (
             decisions["pressure_mpa"][row],
-            day,
+            decisions["effective_on"][row] or decisions["decided_on"][row],
             decisions["reason"][row] or "",
         )
-        for day, _, _, row in rows
-        if day <= today
+        for row in re_ratings(decisions, reader.as_of)
     }
 
 
 def _vessels(
     inputs: Inputs,
-    re_ratings: dict[str, tuple[float, date, str]],
+    rated: dict[str, tuple[float, date, str]],
     done: Iterable[tuple[str, str, date]],
 ) -> dict[str, KnownVessel]:
     looked: dict[tuple[str, str], set[date]] = defaultdict(set)
@@ -152,15 +151,13 @@ def _vessels(
             "last_internal_on": set(looked[tag, "internal"]),
             "last_external_on": set(looked[tag, "external"]),
         }
-        if tag in re_ratings:
-            pressure, day, basis = re_ratings[tag]
-            recorded |= {
-                "current_mawp_mpa": {pressure},
-                "current_mawp_from": {day},
-                "current_mawp_basis": {basis} - {STARTING_BASIS},
-            }
+        if tag in rated:
+            pressure, day, basis = rated[tag]
+            recorded["current_mawp_mpa"] = {pressure}
+            recorded["current_mawp_from"] = {day}
+            recorded["current_mawp_basis"] = {basis} if basis != STARTING_BASIS else set()
         else:
-            # Blank means nameplate, and a blank nameplate means design pressure: that is what stands on record.
+            # Blank means nameplate, and a blank nameplate design pressure: that is what stands on record.
             nameplate = _number(table.nameplate_mawp_mpa[row])
             stands = nameplate if nameplate is not None else _number(table.design_pressure_mpa[row])
             recorded["current_mawp_mpa"] = {stands}
@@ -215,12 +212,11 @@ def _locations(
     inputs: Inputs,
     baselines: dict[LocationKey, list[tuple[float, date]]],
     errors: Floats,
-    required_mm: Floats | None,
+    required: Floats,
 ) -> dict[LocationKey, KnownLocation]:
     table = inputs.locations
     of_part = inputs.parts.alert_thickness_mm[table.part]
     alert = np.where(np.isnan(table.alert_thickness_mm), of_part, table.alert_thickness_mm)
-    required = np.full(len(table), np.nan) if required_mm is None else required_mm
     found: dict[LocationKey, KnownLocation] = {}
     for row, key in enumerate(location_keys(inputs)):
         recorded: dict[str, set[object]] = {"state": {table.state[row] or "in service"}}
@@ -231,7 +227,8 @@ def _locations(
     return found
 
 
-def _baselines(names: Names, readings: Columns) -> dict[LocationKey, list[tuple[float, date]]]:
+def _baselines(reader: Reader, names: Names) -> dict[LocationKey, list[tuple[float, date]]]:
+    readings = reader.rows(models.Reading)
     found: dict[LocationKey, list[tuple[float, date]]] = defaultdict(list)
     for row, kind in enumerate(readings["kind"]):
         if kind == "baseline" and readings["thickness_mm"][row] is not None:
@@ -240,48 +237,40 @@ def _baselines(names: Names, readings: Columns) -> dict[LocationKey, list[tuple[
     return dict(found)
 
 
-def _errors(conn: Connection, known: int, today: date, inputs: Inputs, names: Names) -> Floats:
+def _errors(reader: Reader, inputs: Inputs, names: Names) -> Floats:
     """Resolve the reading error of each location, for comparing new readings with old ones."""
-    in_force = levels.in_force(conn, as_of=today, known=known)
+    in_force = levels.in_force(reader)
     entities = [names.location(*key) for key in location_keys(inputs)]
     parents = [names.tags[entity][1] or 0 for entity in entities]
     vessels = [names.tags[parent][1] or 0 for parent in parents]
     set_for = in_force.nearest("reading_error_mm", (entities, parents, vessels), DEFAULT_READING_ERROR_MM)
     own = in_force.given("reading_error_mm", entities)
-    rows = facts.columns(
-        conn, models.Location, known=known, as_of=today, only=("entity_id", "reading_error_mm")
-    )
+    rows = reader.rows(models.Location)
     register = dict(zip(rows["entity_id"], rows["reading_error_mm"], strict=True))
     told = np.array([register.get(entity) for entity in entities], dtype=np.float64)
     resolved: Floats = np.where(np.isnan(own) & ~np.isnan(told), told, set_for)
     return resolved
 
 
-def fetch_history(conn: Connection, record: OnRecord, *, window_days: float) -> History:
+def fetch_history(record: OnRecord) -> History:
     """Fetch the readings of every location, each with its standing.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
     record : OnRecord
         The register on record [-].
-    window_days : float
-        Days within which readings make one observation [day].
 
     Returns
     -------
     History
         By location, in order of date.
     """
-    columns = facts.columns(
-        conn,
-        models.Reading,
-        known=record.known,
-        only=("id", "location_id", "taken_on", "thickness_mm", "status"),
-    )
+    columns = record.reader.rows(models.Reading)
+    in_force = levels.in_force(record.reader)
+    window = in_force.of_database("observation_window_days", DEFAULT_WINDOW_DAYS)
+    fields = (columns[name] for name in ("location_id", "taken_on", "id", "thickness_mm", "status"))
     rows: dict[int, list[tuple[date, int, float, Standing]]] = defaultdict(list)
-    for number, entity, day, thickness, status in zip(*columns.values(), strict=True):
+    for entity, day, number, thickness, status in zip(*fields, strict=True):
         rows[entity].append((day, number, float("nan") if thickness is None else thickness, status))
     restarts = _last_restarts(record)
     found: dict[LocationKey, list[Recorded]] = {}
@@ -298,7 +287,7 @@ def fetch_history(conn: Connection, record: OnRecord, *, window_days: float) -> 
             )
             for row, (day, _, thickness, status) in enumerate(readings)
         ]
-    return History(found, same_observation_days=int(window_days))
+    return History(found, same_observation_days=int(window))
 
 
 def _opening(readings: list[tuple[date, int, float, Standing]], began: date | None) -> int:

@@ -1,14 +1,13 @@
-"""From the tags that people use to the entities of the store, with the nearest known tag where one is unknown."""
+"""From the tags that people use to the entities of the store; where one is unknown, to the nearest known."""
 
 from __future__ import annotations
 
 import difflib
 from dataclasses import dataclass
 
-from sqlalchemy import Connection
-
 from fleet.errors import UnknownTag
-from fleet.store import facts, models
+from fleet.store import models
+from fleet.tasks.reader import Reader
 
 Key = tuple[str, int | None, str]
 
@@ -188,21 +187,19 @@ def _plain(tag: str) -> str:
     return "".join(letter for letter in tag.casefold() if letter.isalnum()) or tag.casefold()
 
 
-def fetch_names(conn: Connection, *, known: int) -> Names:
+def fetch_names(record: Reader) -> Names:
     """Fetch the names of all entities.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
-    known : int
-        Number of the last journal entry that may be read [count].
+    record : Reader
+        The record at the moment asked about [-].
 
     Returns
     -------
     Names
     """
-    columns = facts.columns(conn, models.Entity, known=known, as_of=None)
+    columns = record.rows(models.Entity)
     keys = list(zip(columns["kind"], columns["parent_id"], columns["tag"], strict=True))
     return Names(
         by_key=dict(zip(keys, columns["id"], strict=True)), tags=dict(zip(columns["id"], keys, strict=True))

@@ -7,10 +7,9 @@ from dataclasses import dataclass
 from datetime import date
 from typing import Any
 
-from sqlalchemy import Connection
-
-from fleet.store import facts, models
+from fleet.store import models
 from fleet.tasks.names import fetch_names
+from fleet.tasks.reader import Reader
 from fleet.words import Notice, notice
 
 
@@ -32,27 +31,21 @@ class Recorded:
     notice: Notice
 
 
-def recorded_notices(
-    conn: Connection, *, known: int, reading_days: dict[int, date], as_of: date
-) -> list[Recorded]:
+def recorded_notices(record: Reader, *, reading_days: dict[int, date]) -> list[Recorded]:
     """Fetch the open doubts and the rows that wait.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
-    known : int
-        Number of the last journal entry that may be read [count].
+    record : Reader
+        The record at the moment asked about [-].
     reading_days : dict of int to date
         The day of every reading in force: a doubt about a later reading is not yet true [date].
-    as_of : date
-        The day the figures are about [date].
 
     Returns
     -------
     list of Recorded
     """
-    columns = facts.columns(conn, models.Doubt, known=known, as_of=None)
+    columns = record.rows(models.Doubt)
     found = [
         Recorded(
             columns["vessel_id"][row],
@@ -66,31 +59,29 @@ def recorded_notices(
             ),
         )
         for row, status in enumerate(columns["status"])
-        if status == "open" and reading_days.get(columns["reading_id"][row], as_of) <= as_of
+        if status == "open" and reading_days.get(columns["reading_id"][row], record.as_of) <= record.as_of
     ]
-    return found + waiting_rows(conn, known=known)
+    return found + waiting_rows(record)
 
 
-def waiting_rows(conn: Connection, *, known: int) -> list[Recorded]:
+def waiting_rows(record: Reader) -> list[Recorded]:
     """Fetch the rows of loaded files that were left waiting.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
-    known : int
-        Number of the last journal entry that may be read [count].
+    record : Reader
+        The record at the moment asked about [-].
 
     Returns
     -------
     list of Recorded
         One gap per row; its entities are None where the row names none that is known.
     """
-    columns = facts.columns(conn, models.ParkedRow, known=known, as_of=None)
+    columns = record.rows(models.ParkedRow)
     rows = [row for row, status in enumerate(columns["status"]) if status == "waiting"]
     if not rows:
         return []
-    names = fetch_names(conn, known=known)
+    names = fetch_names(record)
     found: list[Recorded] = []
     for row in rows:
         content: dict[str, Any] = json.loads(columns["content"][row])

@@ -5,7 +5,6 @@ from __future__ import annotations
 from datetime import date
 
 import numpy as np
-from sqlalchemy import Connection
 
 from fleet.appraisal.inputs import (
     DEFAULT_READING_ERROR_MM,
@@ -24,20 +23,18 @@ from fleet.appraisal.inputs import (
 from fleet.store import models
 from fleet.tasks import settings as levels
 from fleet.tasks.columns import (
-    Columns,
     Index,
-    Moment,
     Tree,
     by_day,
     chain,
     count,
     days,
-    fetch,
     of_index,
     pick,
     same,
 )
 from fleet.tasks.notices import recorded_notices
+from fleet.tasks.reader import Columns, Reader
 
 
 def re_ratings(decisions: Columns, as_of: date) -> list[int]:
@@ -69,21 +66,19 @@ def re_ratings(decisions: Columns, as_of: date) -> list[int]:
     )
 
 
-def fetch_states(conn: Connection, moment: Moment) -> Columns:
+def fetch_states(record: Reader) -> Columns:
     """Fetch the dated states begun by the as-of date, in the order in which they began.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
-    moment : Moment
-        The day the figures are about and the last entry that may be read [-].
+    record : Reader
+        The record at the moment asked about [-].
 
     Returns
     -------
     Columns
     """
-    columns = by_day(fetch(conn, models.DatedState, moment), "from_on", moment.as_of)
+    columns = by_day(record.rows(models.DatedState), "from_on", record.as_of)
     order = sorted(
         range(count(columns)),
         key=lambda row: (columns["from_on"][row], columns["entry_no"][row], columns["id"][row]),
@@ -151,17 +146,13 @@ def idle_times(tree: Tree, states: Columns) -> IdleTimes:
     )
 
 
-def fetch_readings(
-    conn: Connection, moment: Moment, tree: Tree, in_force: levels.Levels
-) -> tuple[Readings, dict[int, date]]:
+def fetch_readings(record: Reader, tree: Tree, in_force: levels.Levels) -> tuple[Readings, dict[int, date]]:
     """Fetch the readings that count, and the day of every reading in force for the doubts about them.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
-    moment : Moment
-        The day the figures are about and the last entry that may be read [-].
+    record : Reader
+        The record at the moment asked about [-].
     tree : Tree
         The register by index [-].
     in_force : Levels
@@ -171,18 +162,18 @@ def fetch_readings(
     -------
     tuple of Readings and dict of int to date
     """
-    every = fetch(conn, models.Reading, moment)
-    days = dict(zip(every["id"], every["taken_on"], strict=True))
+    every = record.rows(models.Reading)
+    reading_days = dict(zip(every["id"], every["taken_on"], strict=True))
     rows = [
         row
         for row, day in enumerate(every["taken_on"])
-        if day <= moment.as_of
+        if day <= record.as_of
         and every["status"][row] != "voided"
         and every["location_id"][row] in tree.location
     ]
     columns = pick(every, rows)
     place = np.array([tree.location[entity] for entity in columns["location_id"]], dtype=np.int64)
-    surveys = fetch(conn, models.Survey, moment)
+    surveys = record.rows(models.Survey)
     name = dict(zip(surveys["id"], surveys["name"], strict=True))
     error = dict(zip(surveys["id"], surveys["reading_error_mm"], strict=True))
     table = Readings.of(
@@ -196,30 +187,28 @@ def fetch_readings(
             tree, in_force, place, [error.get(survey) for survey in columns["survey_id"]]
         ),
     )
-    return table, days
+    return table, reading_days
 
 
 def _reading_error(tree: Tree, in_force: levels.Levels, place: Ints, survey: list[float | None]) -> Floats:
     """Resolve the reading error: location, else survey, else part, vessel, database."""
-    place_chain = chain(tree)
+    places = chain(tree)
     register = np.array(tree.locations["reading_error_mm"], dtype=np.float64)  # None becomes NaN
-    own = in_force.given("reading_error_mm", place_chain[0])
+    own = in_force.given("reading_error_mm", places[0])
     nearest = np.where(np.isnan(own), register, own)[place]
     told = np.array(survey, dtype=np.float64)
-    wider = in_force.nearest("reading_error_mm", place_chain[1:], DEFAULT_READING_ERROR_MM)[place]
+    wider = in_force.nearest("reading_error_mm", places[1:], DEFAULT_READING_ERROR_MM)[place]
     resolved: Floats = np.where(~np.isnan(nearest), nearest, np.where(~np.isnan(told), told, wider))
     return resolved
 
 
-def fetch_restarts(conn: Connection, moment: Moment, tree: Tree) -> Restarts:
+def fetch_restarts(record: Reader, tree: Tree) -> Restarts:
     """Fetch the restarts, a row for every location that each begins anew.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
-    moment : Moment
-        The day the figures are about and the last entry that may be read [-].
+    record : Reader
+        The record at the moment asked about [-].
     tree : Tree
         The register by index [-].
 
@@ -227,8 +216,8 @@ def fetch_restarts(conn: Connection, moment: Moment, tree: Tree) -> Restarts:
     -------
     Restarts
     """
-    columns = by_day(fetch(conn, models.Restart, moment), "happened_on", moment.as_of)
-    named = fetch(conn, models.RestartLocation, moment)
+    columns = by_day(record.rows(models.Restart), "happened_on", record.as_of)
+    named = record.rows(models.RestartLocation)
     of_part: dict[int, list[int]] = {}
     for row, part in enumerate(tree.location_part):
         of_part.setdefault(tree.parts["entity_id"][part], []).append(row)
@@ -249,15 +238,13 @@ def fetch_restarts(conn: Connection, moment: Moment, tree: Tree) -> Restarts:
     )
 
 
-def fetch_inspections(conn: Connection, moment: Moment, tree: Tree) -> Inspections:
+def fetch_inspections(record: Reader, tree: Tree) -> Inspections:
     """Fetch the inspections done by the as-of date.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
-    moment : Moment
-        The day the figures are about and the last entry that may be read [-].
+    record : Reader
+        The record at the moment asked about [-].
     tree : Tree
         The register by index [-].
 
@@ -265,7 +252,7 @@ def fetch_inspections(conn: Connection, moment: Moment, tree: Tree) -> Inspectio
     -------
     Inspections
     """
-    every = by_day(fetch(conn, models.Inspection, moment), "done_on", moment.as_of)
+    every = by_day(record.rows(models.Inspection), "done_on", record.as_of)
     columns, vessel = of_index(every, "vessel_id", tree.vessel)
     return Inspections.of(
         len(vessel), **same(columns, Inspections), vessel=vessel, done_day=days(columns["done_on"])
@@ -300,15 +287,13 @@ def decisions_of(tree: Tree, decisions: Columns) -> Decisions:
     )
 
 
-def fetch_relief(conn: Connection, moment: Moment, tree: Tree) -> Relief:
+def fetch_relief(record: Reader, tree: Tree) -> Relief:
     """Fetch the relief devices linked to the vessels.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
-    moment : Moment
-        The day the figures are about and the last entry that may be read [-].
+    record : Reader
+        The record at the moment asked about [-].
     tree : Tree
         The register by index [-].
 
@@ -316,8 +301,8 @@ def fetch_relief(conn: Connection, moment: Moment, tree: Tree) -> Relief:
     -------
     Relief
     """
-    columns, vessel = of_index(fetch(conn, models.ReliefDevice, moment, dated=True), "vessel_id", tree.vessel)
-    entities = fetch(conn, models.Entity, moment)
+    columns, vessel = of_index(record.rows(models.ReliefDevice), "vessel_id", tree.vessel)
+    entities = record.rows(models.Entity)
     name = dict(zip(entities["id"], entities["tag"], strict=True))
     device = [name[entity] for entity in columns["entity_id"]]
     order = sorted(range(len(device)), key=lambda row: (vessel[row], device[row]))
@@ -329,17 +314,13 @@ def fetch_relief(conn: Connection, moment: Moment, tree: Tree) -> Relief:
     )
 
 
-def fetch_recorded(
-    conn: Connection, moment: Moment, tree: Tree, reading_days: dict[int, date]
-) -> tuple[RecordedNotice, ...]:
+def fetch_recorded(record: Reader, tree: Tree, reading_days: dict[int, date]) -> tuple[RecordedNotice, ...]:
     """Fetch the open doubts and the rows that wait, each at its vessel.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
-    moment : Moment
-        The day the figures are about and the last entry that may be read [-].
+    record : Reader
+        The record at the moment asked about [-].
     tree : Tree
         The register by index [-].
     reading_days : dict of int to date
@@ -349,7 +330,7 @@ def fetch_recorded(
     -------
     tuple of RecordedNotice
     """
-    found = recorded_notices(conn, known=moment.known, reading_days=reading_days, as_of=moment.as_of)
+    found = recorded_notices(record, reading_days=reading_days)
     part_vessel = {entity: int(tree.part_vessel[row]) for entity, row in tree.part.items()}
     rows: list[RecordedNotice] = []
     for one in found:

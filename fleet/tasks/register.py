@@ -9,16 +9,17 @@ from datetime import date, datetime
 from pathlib import Path as FilePath
 from typing import Any
 
-from sqlalchemy import Connection, Engine
+from sqlalchemy import Engine
 
 from fleet.errors import FileRefused, Refused
 from fleet.intake.results import Intake, ParkedRow
 from fleet.rules import DESIGN_CODES, rule_set_names
-from fleet.store import facts, journal, models
+from fleet.store import journal, models
 from fleet.tasks.changes import KINDS, Change, Compared, Path, compare
 from fleet.tasks.files import Waiting, new_parked, record_files, settled, waiting_on_record
 from fleet.tasks.known import OnRecord, fetch_on_record
 from fleet.tasks.names import Names
+from fleet.tasks.reader import Reader
 from fleet.tasks.starting import Starting, starting_values
 from fleet.words import Notice
 
@@ -65,6 +66,17 @@ class RegisterLoaded:
         """Rows written."""
         return sum(self.wrote.values())
 
+    @property
+    def waiting(self) -> tuple[Notice, ...]:
+        """The faults of rows that wait; those of a refused file stand in its refusal."""
+        return self.faults if self.refused is None else ()
+
+    @property
+    def doubts_of_loaded(self) -> tuple[Notice, ...]:
+        """The doubts, unless a refusal tells them."""
+        told = () if self.refused is not None else self.doubts
+        return tuple(one for one in told if one.code != "already loaded")
+
     def as_json(self) -> dict[str, Any]:
         """Give the document for ``--json``."""
         return {
@@ -78,11 +90,12 @@ class RegisterLoaded:
     def sentence(self) -> str:
         """Say in a line or two what was done."""
         said = [f"{name} was loaded before; nothing of it was changed." for name in self.already_loaded]
-        rows = ", ".join(f"{count} {table}" for table, count in self.wrote.items()) or "nothing"
-        verb = "would be written" if self.dry_run else "written"
-        more = [f"{self.unchanged} rows say what is on record already"] if self.unchanged else []
+        rows = ", ".join(f"{count} {table}" for table, count in self.wrote.items())
+        verb = "Would be written" if self.dry_run else "Written"
+        more = [f"{verb}: {rows}"] if rows else []
+        more += [f"{self.unchanged} rows say what is on record already"] if self.unchanged else []
         more += [f"{self.parked} rows wait in 'fleet gaps'"] if self.parked else []
-        said.append("; ".join([f"{verb}: {rows}", *more]).capitalize() + ".")
+        said += [". ".join([*more, ""]).strip()] if more else []
         said += [f"Journal entry {self.entry_no}."] if self.entry_no is not None else []
         return " ".join(said)
 
@@ -130,7 +143,8 @@ def load_register(
 ) -> RegisterLoaded:
     """Load vessels, parts, locations, relief devices and inspections.
 
-    The files of one load are checked together and written together, in one journal entry, or not at all.
+    The files of one load are checked together, for their rows may refer to one another. Each is loaded as a whole
+    or not at all; what is loaded is one journal entry.
 
     Parameters
     ----------
@@ -154,19 +168,17 @@ def load_register(
     Returns
     -------
     RegisterLoaded
-        With `refused` set where faults keep the files out: nothing was written then.
+        With `refused` set where faults keep a file out: nothing of it was written then.
 
     Raises
     ------
-    FileRefused
-        If a file cannot be read at all.
     Refused
-        If somebody else wrote while the files were being checked.
+        If a file cannot be opened at all, or somebody else wrote while the files were being checked.
     """
-    from fleet.intake import read_register
+    from fleet.intake.check_register import read_register
 
     with engine.connect() as conn:
-        record = fetch_on_record(conn, known=journal.head(conn).no, today=today)
+        record = fetch_on_record(Reader.at(conn, as_of=today))
         intake = read_register(
             files,
             known=record.register,
@@ -176,15 +188,7 @@ def load_register(
             park=park,
         )
         before = tuple(file.name for file in intake.files if file.already_loaded)
-        if intake.refused:
-            return RegisterLoaded(
-                faults=intake.faults,
-                doubts=intake.doubts,
-                refused=_refusal(intake),
-                dry_run=dry_run,
-                already_loaded=before,
-            )
-        plan = _plan(conn, intake, record, by=by, today=today, from_on=from_on)
+        plan = _plan(intake, record, by=by, today=today, from_on=from_on)
     number = None if dry_run or plan.empty else _write(engine, plan, record, by=by, at=at)
     return RegisterLoaded(
         wrote=plan.counts,
@@ -192,6 +196,7 @@ def load_register(
         parked=len(intake.parked),
         faults=intake.faults,
         doubts=intake.doubts,
+        refused=_refusal(intake) if intake.refused else None,
         dry_run=dry_run,
         entry_no=number,
         already_loaded=before,
@@ -199,29 +204,27 @@ def load_register(
 
 
 def _refusal(intake: Intake) -> FileRefused:
-    names = ", ".join(file.name for file in intake.files)
+    names = ", ".join(file.name for file in intake.files if file.refused)
     count = len(intake.faults)
     return FileRefused(
         names,
-        f"{count} fault{'s' if count != 1 else ''}; nothing was loaded",
+        f"{count} fault{'s' if count != 1 else ''}; nothing of it was loaded",
         "correct them and load again, or load the good rows with --park-bad-rows",
         intake.faults,
         intake.doubts,
     )
 
 
-def _plan(
-    conn: Connection, intake: Intake, record: OnRecord, *, by: str, today: date, from_on: date | None
-) -> _Plan:
-    compared = compare(conn, intake, names=record.names, known=record.known, today=today, from_on=from_on)
+def _plan(intake: Intake, record: OnRecord, *, by: str, today: date, from_on: date | None) -> _Plan:
+    compared = compare(record.reader, intake, names=record.names, from_on=from_on)
     starting = starting_values(
         compared.rows, intake.rows("inspections"), known=record.register, by=by, today=today
     )
-    waiting = waiting_on_record(conn, known=record.known)
+    waiting = waiting_on_record(record.reader)
     told = [(_about(change), one) for change in compared.changes for one in change.row.doubts]
     told += [((str(row.values["vessel"]),), one) for row in intake.rows("inspections") for one in row.doubts]
     told = [(path, one) for path, one in told if one.code not in NOT_KEPT]
-    doubts, cleared = _doubts(conn, record, compared, told)
+    doubts, cleared = _doubts(record, compared, told)
     return _Plan(
         intake,
         compared,
@@ -239,10 +242,10 @@ def _about(change: Change) -> Path:
 
 
 def _doubts(
-    conn: Connection, record: OnRecord, compared: Compared, told: list[tuple[Path, Notice]]
+    record: OnRecord, compared: Compared, told: list[tuple[Path, Notice]]
 ) -> tuple[list[tuple[Path, Notice]], list[dict[str, Any]]]:
     """Find the doubts to be added, and those on record that the new rows have settled."""
-    columns = facts.columns(conn, models.Doubt, known=record.known)
+    columns = record.reader.rows(models.Doubt)
     changed = {change.path for change in compared.changes if not change.new and change.table != "relief"}
     again = {(path, one.code, one.found) for path, one in told}
     standing: set[tuple[Path, str, str]] = set()
@@ -264,7 +267,7 @@ def _doubts(
 
 def _write(engine: Engine, plan: _Plan, record: OnRecord, *, by: str, at: datetime | None) -> int:
     with journal.writer(engine, task="register load", by=by, at=at) as entry:
-        refuse_if_overtaken(entry, record.known)
+        refuse_if_overtaken(entry, record.reader.known)
         ids = _Ids(record.names)
         for table, kind in KINDS.items():
             changes = [change for change in plan.compared.changes if change.table == table]

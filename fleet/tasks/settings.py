@@ -5,14 +5,13 @@ from __future__ import annotations
 import math
 from collections.abc import Sequence
 from dataclasses import dataclass
-from datetime import date
 
 import numpy as np
-from sqlalchemy import Connection
 
 from fleet.appraisal.inputs import Floats
 from fleet.errors import Refused
-from fleet.store import facts, models
+from fleet.store import models
+from fleet.tasks.reader import Reader
 
 KEYS: dict[str, tuple[str, bool]] = {
     "reading_error_mm": ("error of one reading, one standard deviation [mm]", False),
@@ -135,25 +134,21 @@ class Levels:
         return found
 
 
-def in_force(conn: Connection, *, as_of: date, known: int) -> Levels:
+def in_force(record: Reader) -> Levels:
     """Fetch the settings in force.
 
     Parameters
     ----------
-    conn : sqlalchemy.Connection
-        An open connection [-].
-    as_of : date
-        The day the figures are about [date].
-    known : int
-        Number of the last journal entry that may be read [count].
+    record : Reader
+        The record at the moment asked about [-].
 
     Returns
     -------
     Levels
     """
-    columns = facts.columns(conn, models.Setting, known=known, as_of=None)
+    columns = record.rows(models.Setting)
     order = sorted(
-        (row for row, day in enumerate(columns["from_on"]) if day <= as_of),
+        (row for row, day in enumerate(columns["from_on"]) if day <= record.as_of),
         key=lambda row: (columns["from_on"][row], columns["entry_no"][row], columns["id"][row]),
     )
     return Levels(

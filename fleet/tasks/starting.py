@@ -49,7 +49,7 @@ def starting_values(
 ) -> Starting:
     """Turn starting values into facts.
 
-    A value that agrees with the facts on record writes nothing; one that differs was refused as a fault before.
+    A value that agrees with the facts on record writes nothing; one that differs was refused before.
 
     Parameters
     ----------
@@ -70,16 +70,13 @@ def starting_values(
     """
     told = {(row.values["vessel"], row.values["kind"], row.values["done_on"]) for row in inspections}
     made = Starting()
-    rows = list(rows)
-    in_service = {tag: vessel.in_service_on for tag, vessel in known.vessels.items()}
-    in_service |= {path[0]: row.values["in_service_on"] for table, path, _, row in rows if table == "vessels"}
     for table, path, new, row in rows:
         if new and row.values.get("state") not in {None, IN_SERVICE}:
             made.states.append((path, _state(row, today)))
         if table == "vessels":
             _of_vessel(made, path, row, new=new, known=known, told=told, by=by)
         elif table == "locations":
-            _of_location(made, path, row, known=known, in_service=in_service[path[0]])
+            _of_location(made, path, row, known=known)
     return made
 
 
@@ -126,21 +123,17 @@ def _of_vessel(
         made.inspections.append((path, fact))
 
 
-def _of_location(made: Starting, path: Path, row: Row, *, known: KnownRegister, in_service: Any) -> None:
-    thickness = row.values.get("baseline_thickness_mm")
+def _of_location(made: Starting, path: Path, row: Row, *, known: KnownRegister) -> None:
+    thickness, day = row.values.get("baseline_thickness_mm"), row.values.get("baseline_on")
     key = (path[0], path[1], path[2])
     on_record = known.locations[key].recorded if key in known.locations else {}
-    if thickness is None or on_record.get("baseline_thickness_mm"):
-        return
-    day = row.values.get("baseline_on")
-    if day is None:
-        found = "baseline_on is blank; the baseline is taken as read when the vessel went into service"
-        made.notices.append((path, notice("missing datum", f"{row.where}, baseline_on", found)))
+    if thickness is None or day is None or on_record.get("baseline_thickness_mm"):
+        return  # until both are loaded there is no baseline
     made.baselines.append(
         (
             path,
             {
-                "taken_on": day or in_service,
+                "taken_on": day,
                 "thickness_mm": thickness,
                 "result": "read",
                 "kind": "baseline",

@@ -8,16 +8,14 @@ from datetime import date, datetime
 from pathlib import Path
 from typing import Any
 
-import numpy as np
-from sqlalchemy import Connection, Engine
+from sqlalchemy import Engine
 
-from fleet.appraisal.inputs import DEFAULT_WINDOW_DAYS, Floats, Inputs
 from fleet.errors import FileRefused
 from fleet.intake.results import Row, SurveyIntake
 from fleet.store import journal, models
-from fleet.tasks import settings as levels
 from fleet.tasks.files import new_parked, record_files, settled, waiting_on_record
 from fleet.tasks.known import OnRecord, fetch_history, fetch_on_record
+from fleet.tasks.reader import Reader
 from fleet.tasks.register import NOT_KEPT, doubt_row, refuse_if_overtaken
 from fleet.words import Notice
 
@@ -92,7 +90,7 @@ class SurveysLoaded:
     @property
     def doubts_of_loaded(self) -> tuple[Notice, ...]:
         """The doubts of the files that were let in."""
-        return tuple(one for file in self.files if not file.refused for one in file.doubts)
+        return tuple(one for file in self.files if not file.refused | file.already_loaded for one in file.doubts)
 
     @property
     def refused(self) -> FileRefused | None:
@@ -160,11 +158,11 @@ def thin_text(thin: Sequence[Thin], units: str) -> str:
         limits = [
             f"{name} {shown.text('length', one[f'{name}_thickness_mm'], 'up')}"
             for name in ("required", "alert")
-            if one[f"{name}_thickness_mm"] is not None
+            if name in one["which"]
         ]
         place = " / ".join(str(one[name]) for name in ("vessel", "part", "location"))
-        wall = shown.text("length", one["thickness_mm"], "down")
-        lines.append(f"  {place}  {one['taken_on'] or 'no date'}  read {wall}; {', '.join(limits)}")
+        wall = shown.text("length", one["wall_mm"], "down")
+        lines.append(f"  {place}  {one['taken_on'] or 'no date'}  wall {wall}, at or below {' and '.join(limits)}")
         lines.append(f"    {one['where']}")
     return "\n".join(lines)
 
@@ -178,7 +176,6 @@ def load_surveys(
     park: bool = False,
     dry_run: bool = False,
     at: datetime | None = None,
-    required: bool = True,
 ) -> SurveysLoaded:
     """Load survey files, each as a whole or not at all, each in one journal entry.
 
@@ -198,8 +195,6 @@ def load_surveys(
         Check everything and write nothing [-].
     at : datetime, optional
         Moment of the entries; now where absent [date].
-    required : bool
-        Whether readings are compared with required thicknesses too, for which the fleet is appraised [-].
 
     Returns
     -------
@@ -214,9 +209,7 @@ def load_surveys(
     done: list[FileLoaded] = []
     thin: list[Thin] = []
     for path in files:
-        loaded, low = _load_one(
-            engine, path, by=by, today=today, park=park, dry_run=dry_run, at=at, required=required
-        )
+        loaded, low = _load_one(engine, path, by=by, today=today, park=park, dry_run=dry_run, at=at)
         done.append(loaded)
         thin += low
     return SurveysLoaded(tuple(done), tuple(thin), dry_run)
@@ -231,23 +224,20 @@ def _load_one(
     park: bool,
     dry_run: bool,
     at: datetime | None,
-    required: bool,
 ) -> tuple[FileLoaded, tuple[Thin, ...]]:
-    from fleet.intake import read_survey
+    from fleet.intake.check_readings import read_survey
 
     with engine.connect() as conn:
-        record = _record(conn, today, required=required)
-        in_force = levels.in_force(conn, as_of=today, known=record.known)
-        window = in_force.of_database("observation_window_days", DEFAULT_WINDOW_DAYS)
-        history = fetch_history(conn, record, window_days=window)
+        record = fetch_on_record(Reader.at(conn, as_of=today), required=True)
+        history = fetch_history(record)
         intake = read_survey(path, known=record.register, history=history, today=today, park=park)
-        waiting = waiting_on_record(conn, known=record.known)
+        waiting = waiting_on_record(record.reader)
     rows = intake.rows("readings")
     parked, ended = new_parked(intake.parked, waiting), settled(waiting, intake)
     number = None
     if not dry_run and not intake.refused and (rows or parked or ended):
         with journal.writer(engine, task="survey load", by=by, why=path.name, at=at) as entry:
-            refuse_if_overtaken(entry, record.known)
+            refuse_if_overtaken(entry, record.reader.known)
             keys = record_files(entry, intake, kind="survey", parked=parked, done=ended)
             _write(entry, intake, record, keys.get(intake.files[0].name))
             number = int(entry.no)
@@ -263,44 +253,6 @@ def _load_one(
         entry_no=number,
     )
     return loaded, intake.thin
-
-
-def _record(conn: Connection, today: date, *, required: bool) -> OnRecord:
-    """Fetch the record, with the required thickness of every location where an appraisal gives one."""
-    known = journal.head(conn).no
-    record = fetch_on_record(conn, known=known, today=today)
-    if not required or len(record.inputs.locations) == 0:
-        return record
-    return fetch_on_record(
-        conn, known=known, today=today, required_mm=required_thickness(record.inputs, today)
-    )
-
-
-def required_thickness(inputs: Inputs, as_of: date) -> Floats:
-    """Give the required thickness of every location, NaN where none can be had.
-
-    Parameters
-    ----------
-    inputs : Inputs
-        What the appraisal is made from [-].
-    as_of : date
-        The day the figures are about [date].
-
-    Returns
-    -------
-    Floats
-        In the order of the inputs' locations [mm].
-    """
-    from fleet.appraisal.appraise import appraise
-
-    appraisal = appraise(inputs, as_of=as_of)
-    found = [
-        location.required_thickness_mm
-        for view in appraisal.views()
-        for part in view.parts
-        for location in part.locations
-    ]
-    return np.array(found, dtype=np.float64)
 
 
 def _write(entry: journal.Entry, intake: SurveyIntake, record: OnRecord, source: int | None) -> None:

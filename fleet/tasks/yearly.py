@@ -26,4 +26,12 @@ def write_yearly_list(appraised: Appraised, path: Path, *, units: str) -> None:
     """
     from fleet.reports.workbook import write_derating
 
-    write_derating(appraised.appraisal, path, units=units, grounds=appraised.grounds)
+    grounds = appraised.grounds
+    write_derating(
+        appraised.appraisal,
+        path,
+        units=units,
+        settings=grounds.settings,
+        rules=grounds.rules,
+        program_version=grounds.program_version,
+    )

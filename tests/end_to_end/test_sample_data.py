@@ -199,6 +199,21 @@ def test_every_standing_flag_and_block_is_meant_to_occur() -> None:
     assert {"retired", "out of service", "idle", "re-gauge"} <= {v["block"] for v in vessels}
 
 
+def test_the_register_of_a_trouble_free_vessel_has_no_hole() -> None:
+    free = {v["tag"] for v in expected()["vessel"] if v["trouble_free"]}
+    for row in register()["vessels"]:
+        if row["vessel"] in free:
+            assert None not in {row[name] for name in (
+                "code_edition", "nameplate_mawp", "external_design_pressure", "next_survey_on", "operating_pressure",
+            )}  # fmt: skip
+    for row in register()["parts"]:
+        if row["vessel"] in free and row["shape"] != "other":
+            assert None not in {row[name] for name in (
+                "allowable_stress", "stress_basis", "static_head", "structural_minimum", "required_thickness_axial",
+                "loss_side", "lining", "nominal_thickness",
+            )}  # fmt: skip
+
+
 def test_every_row_stands_under_one_that_exists() -> None:
     sheets = register()
     tags = [row["vessel"] for row in sheets["vessels"]]
@@ -618,6 +633,41 @@ def test_planted_no_echo() -> None:
     assert row["result"] == "no echo"
     assert row["thickness"] is None
     assert row["taken_on"] == max(r["taken_on"] for r in readings() if r["vessel"] == "D-511")
+
+
+@planted("location never measured")
+def test_planted_location_never_measured() -> None:
+    assert not planted_walls("location never measured")
+    assert [r for r in readings() if (r["vessel"], r["part"]) == ("D-313", "top head")]
+
+
+@planted("location measured once")
+def test_planted_location_measured_once() -> None:
+    assert len(planted_walls("location measured once")) == 1
+
+
+@planted("baseline equal to nominal")
+def test_planted_baseline_equal_to_nominal() -> None:
+    t = trouble("baseline equal to nominal")
+    key = (t["vessel"], t["part"], t["location"])
+    row = next(r for r in register()["locations"] if (r["vessel"], r["part"], r["location"]) == key)
+    assert row["baseline_thickness"] == part("D-313", "top head")["nominal_thickness"]
+
+
+@planted("old receiver with thin papers")
+def test_planted_thin_papers() -> None:
+    row = vessel("R-413")
+    assert row["nameplate_mawp"] is None
+    assert row["design_pressure"] > 0
+    assert row["code_edition"] is None
+    assert part("R-413", "top head")["joint_efficiency"] is None
+
+
+@planted("blank cells that count as none")
+def test_planted_blank_cells() -> None:
+    assert part("D-511", "west head")["lining"] is None
+    assert part("D-511", "course 1")["structural_minimum"] is None
+    assert part("D-511", "course 1")["loss_side"] is None
 
 
 @planted("sheet in inches")

@@ -129,7 +129,12 @@ def title(text: str, right: str = "") -> list[str]:
 
 
 def table(
-    heads: Sequence[Head], rows: Sequence[Sequence[str]], *, marks: Sequence[str] | None = None, gap: int = 2
+    heads: Sequence[Head],
+    rows: Sequence[Sequence[str]],
+    *,
+    marks: Sequence[str] | None = None,
+    gap: int = 2,
+    like: Sequence[Sequence[str]] = (),
 ) -> list[str]:
     """Set a table; the widest wrapping columns give way until it fits the page.
 
@@ -143,6 +148,8 @@ def table(
         Standing of each row, for the rule at its left [text].
     gap : int
         Blanks between columns [count].
+    like : sequence of sequence of str
+        Rows of the same table that stand elsewhere, so that all are set alike [text].
 
     Returns
     -------
@@ -156,7 +163,7 @@ def table(
          tag   wall
          V-1  10.12
     """
-    widths = _widths(heads, rows, WIDTH - GUTTER - 1 - gap * (len(heads) - 1))
+    widths = _widths(heads, [*rows, *like], WIDTH - GUTTER - 1 - gap * (len(heads) - 1))
     lines = [" " * (GUTTER + 1) + line for line in _set([head.text for head in heads], heads, widths, gap)]
     for number, row in enumerate(rows):
         mark = strokes(marks[number]) if marks else " " * GUTTER

@@ -142,7 +142,7 @@ def due(appraisal: AppraisalLike, until: date | None = None) -> str:
             ", ".join(overdue_kinds(view)),
             _day(view.internal_due_on),
             _day(view.external_due_on),
-            "cap of the rule set" if view.governing_due is None else str(view.governing_due),
+            _governed_by(view),
             view.standing,
             ", ".join(view.flags),
         ]
@@ -189,11 +189,14 @@ def gaps(appraisal: AppraisalLike, waiting: Iterable[Notice] = ()) -> str:
 
 def _blocks(views: Iterable[VesselView], figures: Figures) -> list[str]:
     lines: list[str] = []
-    for block, members in blocks(views).items():
+    sorted_in = blocks(views)
+    every_row = [_row(view, figures) for members in sorted_in.values() for view in members]
+    for block, members in sorted_in.items():
         lines.append(f"{block}: {len(members) or 'none'}")
         if members:
             rows = [_row(view, figures) for view in members]
-            lines += [*table(_heads(figures), rows, marks=[view.standing for view in members], gap=1), ""]
+            marks = [view.standing for view in members]
+            lines += [*table(_heads(figures), rows, marks=marks, gap=1, like=every_row), ""]
     return lines if lines[-1:] == [""] else [*lines, ""]
 
 
@@ -226,6 +229,12 @@ def _row(view: VesselView, figures: Figures) -> list[str]:
         _day(view.retirement_on),
         ", ".join(view.flags),
     ]
+
+
+def _governed_by(view: VesselView) -> str:
+    if view.governing_due is not None:
+        return str(view.governing_due)
+    return NONE if view.internal_due_on is None else "cap of the rule set"
 
 
 def _due_sum(

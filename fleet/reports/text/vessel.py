@@ -8,6 +8,7 @@ from fleet import units, words
 from fleet.appraisal.views import LocationView, PartView, Place, VesselView
 from fleet.reports import cite
 from fleet.reports.figures import NONE, Figures
+from fleet.reports.reason import why
 from fleet.reports.story import measured_words, operating_sentence, plateau_sentence, relief_sentences
 from fleet.reports.text.layout import Head, marked, paragraph, table, title
 from fleet.words import Notice
@@ -33,7 +34,7 @@ def show(view: VesselView, display: units.Display = units.SI) -> str:
         *title(f"{view.vessel}   {view.service}".rstrip(), f"as of {view.as_of.isoformat()}"),
         *paragraph(words.CAUTION),
         "",
-        *_answer(view),
+        *_answer(view, figures),
         "",
         *_headed("Pressure", _pressures(view, figures)),
         *_headed("Life and dates", _dates(view, figures)),
@@ -48,9 +49,8 @@ def show(view: VesselView, display: units.Display = units.SI) -> str:
     return "\n".join(lines) + "\n"
 
 
-def _answer(view: VesselView) -> list[str]:
-    why = view.sentence or f"{words.STANDING_MEANING[view.standing]}."
-    lines = marked(view.standing, f"{view.standing}: {why}")
+def _answer(view: VesselView, figures: Figures) -> list[str]:
+    lines = marked(view.standing, f"{view.standing}: {why(view, figures)}")
     beside = [f"{flag}" for flag in view.flags]
     if view.block not in {view.standing, *view.flags}:
         beside.append(view.block)
@@ -115,7 +115,8 @@ def _due_by(view: VesselView, figures: Figures) -> str:
     said = [_last(view.last_internal_on)]
     if view.internal_interval_years is not None:
         said.append(f"interval {figures.with_unit(figures.years(view.internal_interval_years), 'years')}")
-    said.append(_by(view.governing_due) if view.governing_due else "the cap of the rule set governs")
+    if view.internal_due_on is not None:
+        said.append(_by(view.governing_due) if view.governing_due else "the cap of the rule set governs")
     return ", ".join(said)
 
 
@@ -123,8 +124,8 @@ def _relief(view: VesselView, figures: Figures) -> list[str]:
     said = [sentence.text for sentence in relief_sentences(view, figures)]
     quiet = [device for device in view.relief if not device.now and not device.reset_by_on]
     said += [
-        f"{device.device}, set at {figures.with_unit(figures.asked(device.set_pressure_mpa), 'pressure')}, "
-        "is not above what the wall carries."
+        f"{device.device} ({figures.with_unit(figures.asked(device.set_pressure_mpa), 'pressure')}) "
+        "is set no higher than what the wall carries."
         for device in quiet
     ]
     if not view.relief:
@@ -143,11 +144,12 @@ def _ways_out(view: VesselView, figures: Figures) -> list[str]:
         said.append(
             f"Look again by {ways.rating_holds_until.isoformat()}: to that day the current MAWP holds."
         )
-    if ways.pressure_that_reaches_mpa is not None and view.carry_to_on is not None:
-        pressure = figures.with_unit(figures.carries(ways.pressure_that_reaches_mpa), "pressure")
-        said.append(f"Re-rate to {pressure}: the wall carries that to {view.carry_to_on.isoformat()}.")
-    else:
+    reaches, current = ways.pressure_that_reaches_mpa, view.current_mawp_mpa
+    if reaches is None or view.carry_to_on is None:
         said.append("No lower pressure reaches the carry-to date, or none can be had.")
+    elif current is None or reaches < current:
+        pressure = figures.with_unit(figures.carries(reaches), "pressure")
+        said.append(f"Re-rate to {pressure}: the wall carries that to {view.carry_to_on.isoformat()}.")
     if ways.renew_by is not None:
         said.append(f"Repair or renew by {ways.renew_by.isoformat()}.")
     return [line for text in said for line in paragraph(text, indent=5)]
@@ -172,7 +174,8 @@ def _parts(view: VesselView, figures: Figures) -> list[str]:
 
 
 def _part_line(part: PartView, figures: Figures) -> str:
-    said = f"{part.part}, {part.shape}: required {figures.needed(part.required_thickness_mm)}"
+    required = figures.with_unit(figures.needed(part.required_thickness_mm), "length")
+    said = f"{part.part}, {part.shape}: required {required}"
     rests_on = cite.required_rests_on(part, part.required_by)
     said += f" set by {part.required_by}" if part.required_by else ""
     said += f", {rests_on}" if rests_on else ""

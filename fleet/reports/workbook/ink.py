@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING, Literal
+from typing import TYPE_CHECKING, Literal, get_args
 
 if TYPE_CHECKING:
     from openpyxl.styles import Border, NamedStyle, PatternFill
@@ -18,26 +18,26 @@ PROSE = "Times New Roman"
 """Face of titles and sentences."""
 
 Role = Literal[
-    "title",
-    "prose",
-    "strong",
-    "note",
-    "group",
-    "head",
-    "head number",
-    "block",
-    "cell",
-    "cell right",
-    "line",
-    "number",
-    "date",
-]
+    "title", "prose", "strong", "note", "line", "group", "head", "head tag", "head number", "block",
+    "tag", "cell", "cell right", "number", "total", "date",
+]  # fmt: skip
+"""What a cell is for; each has a style of its own name, numbers one per count of decimals."""
 
 _SIZES: dict[str, float] = {"title": 18, "prose": 12, "strong": 12, "note": 8, "block": 10, "line": 9}
+_RULED = {
+    **dict.fromkeys(("head", "head tag", "head number", "total"), "medium"),
+    **dict.fromkeys(("tag", "cell", "cell right", "number", "date"), "hair"),
+    "group": "thin",
+}
+_BOLD = {"total", "strong", "head", "head tag", "head number", "group", "block"}
+_RIGHT = {"number", "total", "head number", "cell right"}
+_INDENTED = {"title", "prose", "strong", "note", "line", "tag", "head tag"}
+_WRAPPED = {"head tag", "prose", "strong", "head", "head number", "cell", "cell right", "tag", "line"}
+_PATTERNS = {"date": "yyyy-mm-dd", "cell right": "@_)", "head number": "@_)", "total": "0_)"}
 
 
 def number_format(decimals: int) -> str:
-    """Give the number format for a count of decimals.
+    """Give the number format for a count of decimals, with a hair of space behind the number.
 
     Parameters
     ----------
@@ -51,9 +51,9 @@ def number_format(decimals: int) -> str:
     Examples
     --------
     >>> number_format(3), number_format(0)
-    ('0.000', '0')
+    ('0.000_)', '0_)')
     """
-    return "0." + "0" * decimals if decimals > 0 else "0"
+    return ("0." + "0" * decimals if decimals > 0 else "0") + "_)"
 
 
 def lay_out_styles(book: Workbook) -> None:
@@ -70,21 +70,7 @@ def lay_out_styles(book: Workbook) -> None:
     normal = book._named_styles["Normal"]  # type: ignore[attr-defined]  # noqa: SLF001
     normal.font = Font(name=FACE, size=10, color=INK)
     normal.bind(book)
-    roles: tuple[Role, ...] = (
-        "title",
-        "prose",
-        "strong",
-        "note",
-        "group",
-        "head",
-        "head number",
-        "block",
-        "cell",
-        "cell right",
-        "line",
-        "date",
-    )
-    for role in roles:
+    for role in get_args(Role):
         book.add_named_style(_style(role, role))
     for decimals in range(5):
         book.add_named_style(_style(number_style(decimals), "number", number_format(decimals)))
@@ -168,24 +154,16 @@ def _style(name: str, role: Role, pattern: str = "General") -> NamedStyle:
 
     style = NamedStyle(name=name)
     face = PROSE if role in {"title", "prose", "strong"} else FACE
-    bold = role in {"strong", "head", "head number", "group", "block"}
-    style.font = Font(name=face, size=_SIZES.get(role, 8), bold=bold, color=INK, italic=role == "note")
-    ends = {"number": "right", "head number": "right", "cell right": "right"}
-    style.alignment = Alignment(
-        horizontal=ends.get(role, "left"),
-        vertical="bottom" if role.startswith("head") or role == "block" else "top",
-        wrap_text=role in {"prose", "strong", "head", "head number", "cell", "line"},
+    style.font = Font(
+        name=face, size=_SIZES.get(role, 8), bold=role in _BOLD, color=INK, italic=role == "note"
     )
-    under = {
-        "head": "medium",
-        "head number": "medium",
-        "group": "thin",
-        "cell": "hair",
-        "cell right": "hair",
-        "number": "hair",
-        "date": "hair",
-    }
-    if role in under:
-        style.border = Border(bottom=Side(style=under[role], color=INK))  # type: ignore[arg-type]  # openpyxl's names
-    style.number_format = "yyyy-mm-dd" if role == "date" else pattern
+    style.alignment = Alignment(
+        horizontal="right" if role in _RIGHT else "left",
+        vertical="bottom" if role in {"head", "head tag", "head number", "total", "block"} else "top",
+        indent=1 if role in _INDENTED else 0,
+        wrap_text=role in _WRAPPED,
+    )
+    if role in _RULED:
+        style.border = Border(bottom=Side(style=_RULED[role], color=INK))  # type: ignore[arg-type]  # openpyxl's names
+    style.number_format = _PATTERNS.get(role, pattern)
     return style

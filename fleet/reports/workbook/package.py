@@ -16,7 +16,7 @@ from typing import TYPE_CHECKING
 from fleet import __version__, units
 from fleet.errors import Refused
 from fleet.reports.figures import Figures
-from fleet.reports.source import AppraisalLike, Grounds, RuleValueLike, reconciled
+from fleet.reports.source import AppraisalLike, Grounds, RuleValueLike, Snapshot, reconciled
 from fleet.reports.workbook import how_to_read, ink, rests_on, shortlists, the_list, the_year, timetable
 from fleet.reports.workbook.page import Stamp
 
@@ -95,9 +95,10 @@ def workbook_bytes(
     -------
     bytes
     """
+    appraisal = Snapshot(appraisal)
     figures = Figures(_display(units))
     stamp = Stamp(
-        f"Yearly list, as of {appraisal.as_of.isoformat()}",
+        f"as of {appraisal.as_of.isoformat()}",
         f"{appraisal.journal_no} {appraisal.journal_head}",
     )
     book = _book(appraisal, figures, stamp, Grounds(settings, rules, program_version))
@@ -126,7 +127,7 @@ def _book(appraisal: AppraisalLike, figures: Figures, stamp: Stamp, grounds: Gro
     shortlists.draw_doubts(book, appraisal, figures, stamp)
     shortlists.draw_gaps(book, appraisal, figures, stamp)
     how_to_read.draw(book, appraisal, figures, stamp, grounds)
-    book.properties.title = stamp.title
+    book.properties.title = f"Yearly list, {stamp.as_of}"
     book.properties.creator = "fleet"
     book.properties.created = _midnight(appraisal)
     return book

@@ -6,6 +6,7 @@ import textwrap
 from collections.abc import Sequence
 from dataclasses import dataclass
 from datetime import date
+from itertools import pairwise
 from typing import TYPE_CHECKING, Any
 
 from fleet import words
@@ -20,11 +21,13 @@ if TYPE_CHECKING:
 Value = str | int | float | date | Figure | None
 """What a cell takes; a `Figure` brings its decimals along, None is a blank."""
 
-WIDTH_OF_LETTER = 0.78
+WIDTH_OF_LETTER = 0.75
 """Width of a letter of a table, in widths of a digit of the default face [-]."""
-PADDING = 1.0
+PADDING = 1.4
 """Room at the sides of a column, in the same measure [-]."""
-LINE_HEIGHT = 10.0
+FULL_PAGE = 150.0
+"""Width of A4 landscape between its margins: a narrower page would not be filled, and broken too late [-]."""
+LINE_HEIGHT = 9.8
 """Height of a line of a table [point]."""
 
 DANGEROUS = ("=", "+", "-", "@", "\t", "\r")
@@ -159,7 +162,8 @@ class Page:
                 self.put(self.row, number, column.group or None, "group")
             self.row += 1
         for number, column in enumerate(columns, self.FIRST):
-            self.put(self.row, number, column.head, "head number" if column.number else "head")
+            style = "head number" if column.number else "head tag" if number == self.FIRST else "head"
+            self.put(self.row, number, column.head, style)
         self._head_row = self._last_row = self.row
         self._lines[self.row] = [column.head for column in columns]
         self.sheet.freeze_panes = self.sheet.cell(self.row + 1, self.FIRST + freeze)
@@ -235,7 +239,7 @@ class Page:
             start_row=row, end_row=row, start_column=self.FIRST, end_column=self.FIRST + columns - 1
         )
         lines = len(textwrap.wrap(text, letters)) or 1
-        self.sheet.row_dimensions[row].height = min(height * lines + 5, 409)  # the most that Excel allows
+        self.sheet.row_dimensions[row].height = min(height * lines + 3, 409)  # the most that Excel allows
         self.row += 1
         return row
 
@@ -251,15 +255,15 @@ class Page:
         self._last_row = self.row
         self.row += 1
 
-    def finish(self, *, breaks_before: str | None = None, elastic: tuple[str, str] | None = None) -> None:
-        """Set filter and widths once every row of the table is there.
+    def finish(self, *, breaks_before: Sequence[str] = (), elastic: Sequence[str] = ()) -> None:
+        """Set filter, widths and heights once every row of the table is there.
 
         Parameters
         ----------
-        breaks_before : str, optional
-            Heading of the column with which a second printed page begins [text].
-        elastic : tuple of str, optional
-            Headings of the two columns, one on each page, that take up the difference of their widths [text].
+        breaks_before : sequence of str
+            Headings of the columns with which the second and further printed pages begin [text].
+        elastic : sequence of str
+            Headings of the columns, one on each page, that take up the differences in width [text].
         """
         from openpyxl.utils import get_column_letter
 
@@ -267,13 +271,10 @@ class Page:
         widths = [letters * WIDTH_OF_LETTER + PADDING for letters in self._wide]
         widths[0] += 1  # the tag stands a little in from its rule
         last = get_column_letter(self.FIRST + len(heads) - 1)
-        if breaks_before and elastic:
-            turn, kept = heads.index(breaks_before), self._kept
-            # the first columns are repeated on the second page; the first page must be the wider by a hair
-            # to be broken just here
-            lead = sum(widths[:turn]) - (sum(widths[:kept]) + sum(widths[turn:])) - 0.5
-            widths[heads.index(elastic[1] if lead > 0 else elastic[0])] += abs(lead)
-            self.sheet.page_setup.fitToWidth = 2
+        if breaks_before:
+            turns = [0, *(heads.index(head) for head in breaks_before), len(heads)]
+            _even_out(widths, turns, self._kept, [heads.index(head) for head in elastic])
+            self.sheet.page_setup.fitToWidth = len(turns) - 1
             self.sheet.page_setup.pageOrder = "overThenDown"
             # a title would be cut off where its column is repeated; the head of the page names the sheet
             self.sheet.print_area = f"A{self._first_head_row}:{last}{self._last_row}"
@@ -328,14 +329,31 @@ def _write_text(cell: Any, text: str) -> None:
         cell.quotePrefix = True
 
 
+def _even_out(widths: list[float], turns: Sequence[int], kept: int, elastic: Sequence[int]) -> None:
+    """Make the printed pages equally wide, the first by a hair the widest, so that each is broken at its turn."""
+    repeated = sum(widths[:kept])
+    pages = [(repeated if start else 0) + sum(widths[start:end]) for start, end in pairwise(turns)]
+    widest = max(*pages, FULL_PAGE) + 0.3 * len(pages)
+    for number, (page, column) in enumerate(zip(pages, elastic, strict=True)):
+        widths[column] += widest - 0.3 * number - page
+
+
 def _height(texts: Sequence[str], widths: Sequence[float], *, bold: bool) -> float:
     """Count the lines of the tallest cell: Excel does not do so before somebody touches the row."""
     face = WIDTH_OF_LETTER * (1.08 if bold else 1.0)
     lines = max(
-        len(textwrap.wrap(text, max(int((width - PADDING) / face + 0.01), 1), break_on_hyphens=False)) or 1
+        sum(
+            len(textwrap.wrap(line, _room(width, face), break_on_hyphens=False)) or 1
+            for line in text.split("\n")
+        )
         for text, width in zip(texts, widths, strict=True)
     )
     return min(lines * LINE_HEIGHT + 3, 409)  # the most that Excel allows
+
+
+def _room(width: float, face: float) -> int:
+    """Letters that surely fit on a line of a column."""
+    return max(int((width - 0.5) / face), 1)
 
 
 def _plain(text: str) -> str:
@@ -345,7 +363,8 @@ def _plain(text: str) -> str:
 
 def _longest(value: Value, widest: int) -> int:
     if isinstance(value, date):
-        return 9  # narrow digits and hyphens
+        return 11  # digits are wider than letters
     text = "" if value is None else str(value)
+    longest_line = max((len(line) for line in text.split("\n")), default=0)
     longest_word = max((len(word) for word in text.split()), default=0)
-    return max(min(len(text), widest), min(longest_word, 40))
+    return max(min(longest_line, widest), min(longest_word, 40))

@@ -14,7 +14,9 @@ from fleet.reports.workbook.page import Column, Page, Stamp, Value
 if TYPE_CHECKING:
     from openpyxl.workbook import Workbook
 
-SECOND_PAGE, POSITION, DOUBTS = "Required by clause", "Position", "Doubts in words"
+TURNS = (("Long-term rate", "rate"), ("Nominal", "length"))
+"""Headings, and the quantity whose unit they bear, with which the second and third printed pages begin."""
+POSITION, CLAUSE, DOUBTS = "Position", "Required by clause", "Doubts in words"
 
 
 def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stamp) -> None:
@@ -35,6 +37,7 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
     page.title(
         "What each figure rests on",
         "A row per location, vessels in the order of the list. A clause not read itself says so.",
+        "Life at the least measurable rate counts from the last observation; it stands beside losses too small to see.",
     )
     page.heads(columns(figures), freeze=3)
     drawn = 0
@@ -45,7 +48,8 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
                 page.line(_row(view, part, place, figures), standing=view.standing)
     if not drawn:
         page.none()
-    page.finish(breaks_before=SECOND_PAGE, elastic=(POSITION, DOUBTS))
+    turns = tuple(f"{head} [{figures.unit(kind)}]" for head, kind in TURNS)
+    page.finish(breaks_before=turns, elastic=(POSITION, CLAUSE, DOUBTS))
 
 
 def columns(figures: Figures) -> list[Column]:
@@ -62,15 +66,15 @@ def columns(figures: Figures) -> list[Column]:
     """
     pressure, length, rate = (f"[{figures.unit(quantity)}]" for quantity in ("pressure", "length", "rate"))
     return [
-        Column("Vessel", 14, group="The place"),
+        Column("Vessel", 14),
         Column("Part", 16),
         Column("Location", 12),
-        Column("Shape", 14),
+        Column("Shape", 14, group="The place"),
         Column(POSITION, 18),
         Column("Standing of the location", 12),
-        Column("Obser-vations", number=True, group="Readings"),
+        Column("Times observed", number=True, group="Readings"),
         Column("Over [years]", number=True),
-        Column("Last on", 10),
+        Column("Last on", 11),
         Column(f"Last wall {length}", number=True),
         Column(f"Wall used {length}", number=True),
         Column(f"Wall in strength {length}", number=True),
@@ -84,14 +88,14 @@ def columns(figures: Figures) -> list[Column]:
         Column(f"Planning rate {rate}", number=True),
         Column("Basis", 12),
         Column(f"Required thickness {length}", number=True, group="What it needs"),
-        Column("Set by", 10),
-        Column(SECOND_PAGE, 26),
-        Column(f"Nominal {length}", number=True),
+        Column("Set by", 11),
+        Column(CLAUSE, 26),
+        Column(f"Nominal {length}", number=True, group="The part"),
         Column("Material", 16),
         Column(f"Allowable stress {pressure}", number=True),
         Column(f"Static head {pressure}", number=True),
         Column("Retirement", 10, group="How long, how much"),
-        Column("Life at least measurable rate, from last observation [years]", number=True),
+        Column("Life at least measurable rate [years]", number=True),
         Column("Half-life interval [years]", number=True),
         Column(f"Projected wall {length}", number=True),
         Column(f"MAWP today {pressure}", number=True),

@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING
 from fleet import words
 from fleet.appraisal.views import VesselView
 from fleet.reports.figures import NONE, Figures
+from fleet.reports.reason import why
 from fleet.reports.source import AppraisalLike, in_list_order, located
 from fleet.reports.workbook.page import Column, Page, Stamp
 from fleet.words import Notice
@@ -39,23 +40,24 @@ def draw_running_out(book: Workbook, appraisal: AppraisalLike, figures: Figures,
     page.title(
         "Running out",
         "Vessels that retire within twice their internal interval or ten years, the lesser; soonest first.",
+        "Life at the least measurable rate counts from the last observation.",
     )
     page.heads(
         [
             Column("Vessel", 16),
             Column("Standing", 14),
             Column("Block", 14),
-            Column("Retirement", 10),
+            Column("Retirement", 11),
             Column("Life left [years]", number=True),
             Column("Part", 16),
             Column("Location", 14),
-            Column("Last on", 10),
+            Column("Last on", 11),
             Column(f"Last wall {length}", number=True),
             Column(f"Required thickness {length}", number=True),
             Column(f"Planning rate {rate}", number=True),
             Column("Basis", 12),
-            Column("Life at least measurable rate, from last observation [years]", number=True),
-            Column("Current MAWP holds until", 10),
+            Column("Life at least measurable rate [years]", number=True),
+            Column("Current MAWP holds until", 11),
             Column("Why", 44),
         ]
     )
@@ -81,7 +83,7 @@ def draw_running_out(book: Workbook, appraisal: AppraisalLike, figures: Figures,
                 place.rate_basis if place else NONE,
                 figures.years(place.life_at_least_measurable_rate_years if place else None),
                 view.rating_holds_until or NONE,
-                view.sentence,
+                why(view, figures),
             ],
             standing=view.standing,
         )
@@ -141,9 +143,9 @@ def draw_re_gauge(book: Workbook, appraisal: AppraisalLike, figures: Figures, st
             Column("Part", 18),
             Column("Location", 14),
             Column("Position", 20),
-            Column("Gauge by", 10),
+            Column("Gauge by", 11),
             Column("Standing", 14),
-            Column("Last on", 10),
+            Column("Last on", 11),
             Column(f"Last wall {length}", number=True),
             Column(f"Required thickness {length}", number=True),
             Column(f"Short-term rate {rate}", number=True),

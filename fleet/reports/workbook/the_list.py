@@ -1,4 +1,4 @@
-"""Sheet `The list`: every vessel once, in its block; the verdict on one page, the wall on the next."""
+"""Sheet `The list`: every vessel once, in its block; printed over three pages: verdict, dates, wall."""
 
 from __future__ import annotations
 
@@ -6,9 +6,10 @@ from collections.abc import Sequence
 from typing import TYPE_CHECKING
 
 from fleet import words
-from fleet.appraisal.views import LocationView, PartView, VesselView
+from fleet.appraisal.views import LocationView, PartView, Place, VesselView
 from fleet.reports import cite
 from fleet.reports.figures import NONE, Figures
+from fleet.reports.reason import why
 from fleet.reports.source import AppraisalLike, located, reconciled
 from fleet.reports.story import measured_words, operating_sentence, plateau_sentence, relief_sentences
 from fleet.reports.workbook.page import Column, Page, Stamp, Value
@@ -17,8 +18,10 @@ if TYPE_CHECKING:
     from openpyxl.workbook import Workbook
 
 WALL = "Governs life"
-"""Heading of the column with which the second page begins."""
-WHY, CLAUSE = "Why", "Required by clause"
+"""Heading of the column with which the third printed page begins."""
+OPERATING = "Operating"
+"""Heading, but for its unit, of the column with which the second printed page begins."""
+WHY, IN_WORDS, CLAUSE = "Why", "Relief and operation in words", "Required by clause"
 
 
 def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stamp) -> None:
@@ -39,15 +42,16 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
     page.title(
         f"The list, {appraisal.as_of.isoformat()}",
         words.CAUTION,
-        "One block per standing, worst first. Printed on two pages side by side: the verdict, then the wall.",
+        "One block per standing, worst first. Printed on three pages side by side: verdict, dates, wall.",
         f"{NONE} is a figure that cannot be had; the sheet Gaps says why. A blank does not apply.",
     )
     page.heads(columns(figures), freeze=1)
     for block, members in reconciled(appraisal).items():
-        page.block(f"{block}: {len(members)}" if members else f"{block}: none")
+        page.block(f"{block}: {len(members)}" if members else f"{block}: none", aside=1)
         for view in members:
             page.line(row(view, figures), standing=view.standing)
-    page.finish(breaks_before=WALL, elastic=(WHY, CLAUSE))
+    turns = (f"{OPERATING} pressure [{figures.unit('pressure')}]", WALL)
+    page.finish(breaks_before=turns, elastic=(WHY, IN_WORDS, CLAUSE))
 
 
 def columns(figures: Figures) -> list[Column]:
@@ -64,50 +68,50 @@ def columns(figures: Figures) -> list[Column]:
     """
     pressure, length, rate = (f"[{figures.unit(quantity)}]" for quantity in ("pressure", "length", "rate"))
     return [
-        Column("Vessel", 16, group="The verdict"),
-        Column("Block", 12),
-        Column("Standing", 12),
-        Column("Flags", 12),
-        Column("Service", 18),
-        Column(WHY, 30),
+        Column("Vessel", 16),
+        Column("Block", 11, group="The verdict"),
+        Column("Standing", 11),
+        Column("Flags", 11),
+        Column("Service", 16),
+        Column(WHY, 26),
         Column(f"Current MAWP {pressure}", number=True, group="Pressure"),
         Column(f"MAWP today {pressure}", number=True),
         Column(f"Projected MAWP {pressure}", number=True),
         Column(f"Projected, uncapped {pressure}", number=True),
-        Column("Carried to", 10),
+        Column("Carried to", 11),
         Column(f"Margin then {pressure}", 9, number=True),
-        Column("Governs pressure", 14),
+        Column("Governs pressure", 18),
         Column(f"At list's end {pressure}", number=True),
-        Column(f"Operating pressure {pressure}", number=True, group="Relief and operation"),
+        Column(f"{OPERATING} pressure {pressure}", number=True, group="Relief and operation"),
         Column(f"Margin today, operating {pressure}", number=True),
         Column(f"Relief, lowest set {pressure}", number=True),
         Column(f"Margin today, relief {pressure}", number=True),
-        Column("Relief and operation in words", 26),
+        Column(IN_WORDS, 26),
         Column("Current MAWP holds until", 10, group="Ways out"),
         Column(f"Pressure that reaches {pressure}", number=True),
-        Column("Repair or renew by", 10),
-        Column(WALL, 16, group="The wall at the place that governs life"),
+        Column("Repair or renew by", 11),
+        Column("Life left [years]", number=True, group="Dates"),
+        Column("Retirement", 11),
+        Column("Internal or on-stream due", 11),
+        Column("External due", 11),
+        Column("Governs due", 12),
+        Column("Interval [years]", number=True),
+        Column("Interval in words", 20),
+        Column(WALL, 18, group="The wall at the place that governs life"),
         Column(f"Last wall {length}", number=True),
-        Column("Last on", 10),
+        Column("Last on", 11),
         Column(f"Planning rate {rate}", number=True),
-        Column("Basis", 12),
+        Column("Basis", 11),
         Column(f"Long-term rate {rate}", number=True),
         Column(f"Short-term rate {rate}", number=True),
         Column(f"Required thickness {length}", number=True),
-        Column("Set by", 10),
-        Column(CLAUSE, 22),
-        Column("Life left [years]", number=True, group="Dates"),
-        Column("Retirement", 10),
-        Column("Internal or on-stream due", 10),
-        Column("External due", 10),
-        Column("Governs due", 16),
-        Column("Interval [years]", number=True),
-        Column("Interval in words", 24),
-        Column("Obser-vations", number=True, group="What it rests on"),
+        Column("Set by", 11),
+        Column(CLAUSE, 18),
+        Column("Times observed", number=True, group="What it rests on"),
         Column("Over [years]", number=True),
         Column(f"Reading error {length}", number=True),
         Column("Age [years]", number=True),
-        Column("Parts measured", 14),
+        Column("Parts measured", 11),
         Column("Doubts", number=True),
         Column("Gaps", number=True),
     ]
@@ -130,12 +134,12 @@ def row(view: VesselView, figures: Figures) -> list[Value]:
     """
     part, place = located(view, view.governing_life)
     return [
-        *(view.vessel, view.block, view.standing, ", ".join(view.flags), view.service, view.sentence),
+        *(view.vessel, view.block, view.standing, ", ".join(view.flags), view.service, why(view, figures)),
         *_pressures(view, figures),
         *_relief(view, figures),
         *_ways_out(view, figures),
-        *_wall(view, part, place, figures),
         *_dates(view, figures),
+        *_wall(view, part, place, figures),
         *_rests_on(view, place, figures),
     ]
 
@@ -151,7 +155,7 @@ def _pressures(view: VesselView, figures: Figures) -> Sequence[Value]:
         words.HELD_BY_HALF_LIFE
         if view.held_by_half_life
         else figures.carries(_less(view.projected_mawp_mpa, view.current_mawp_mpa)),
-        NONE if view.governing_pressure is None else str(view.governing_pressure),
+        place_words(view.governing_pressure),
         None if at_end is None else figures.carries(at_end),
     )
 
@@ -183,7 +187,7 @@ def _ways_out(view: VesselView, figures: Figures) -> Sequence[Value]:
 def _wall(
     view: VesselView, part: PartView | None, place: LocationView | None, figures: Figures
 ) -> Sequence[Value]:
-    governs = NONE if view.governing_life is None else str(view.governing_life)
+    governs = place_words(view.governing_life)
     if part is None or place is None:
         return (governs, *(NONE for _ in range(9)))
     return (
@@ -206,7 +210,7 @@ def _dates(view: VesselView, figures: Figures) -> Sequence[Value]:
         view.retirement_on or NONE,
         view.internal_due_on or NONE,
         view.external_due_on or NONE,
-        "cap of the rule set" if view.governing_due is None else str(view.governing_due),
+        _governs_due(view),
         figures.years(view.internal_interval_years),
         plateau_sentence(view, figures),
     )
@@ -224,6 +228,33 @@ def _rests_on(view: VesselView, place: LocationView | None, figures: Figures) ->
         figures.spent(age),
         *counts,
     )
+
+
+def place_words(place: Place | None) -> str:
+    """Write a place on two lines, so that a location is never broken at its hyphen.
+
+    Parameters
+    ----------
+    place : Place or None
+        The place [-].
+
+    Returns
+    -------
+    str
+
+    Examples
+    --------
+    >>> print(place_words(Place("top head", "L-07")))
+    top head /
+    L-07
+    """
+    return NONE if place is None else str(place).replace(" / ", " /\n")
+
+
+def _governs_due(view: VesselView) -> str:
+    if view.governing_due is None and view.internal_due_on is not None:
+        return "cap of the rule set"
+    return place_words(view.governing_due)
 
 
 def _less(one: float | None, other: float | None) -> float | None:

@@ -22,7 +22,7 @@ MEANING: dict[str, str] = {
     words.RETIRED: "retired; kept on the list so that it adds up",
 }
 """What each block of the list says [text]."""
-LETTERS = {"prose": 108, "strong": 96}
+LETTERS = {"prose": 112, "strong": 100}
 """Letters that surely fit on a line of the letter [count]."""
 
 
@@ -45,7 +45,7 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
     sheet.column_dimensions["A"].width = 1.6
     sheet.column_dimensions["B"].width = 26
     sheet.column_dimensions["C"].width = 10
-    sheet.column_dimensions["D"].width = 74
+    sheet.column_dimensions["D"].width = 82
     page.title("The year")
     _sentence(page, words.CAUTION, "strong")
     page.row += 1
@@ -63,17 +63,17 @@ def _sentence(page: Page, text: str, style: str) -> int:
 
 def _blocks(page: Page, appraisal: AppraisalLike) -> None:
     for place, head in enumerate(("Block of the list", "Vessels", "What it says")):
-        page.put(page.row, page.FIRST + place, head, "head number" if place == 1 else "head")
+        page.put(page.row, page.FIRST + place, head, ("head tag", "head number", "head")[place])
     page.row += 1
     total = 0
     for block, members in reconciled(appraisal).items():
         total += len(members)
-        page.put(page.row, page.FIRST, block, "cell")
+        page.put(page.row, page.FIRST, block, "tag")
         page.put(page.row, page.FIRST + 1, len(members), "cell")
         page.put(page.row, page.FIRST + 2, MEANING[block], "cell")
         if block in words.STANDINGS:
             page.sheet.cell(page.row, page.GUTTER).border = ink.rule(heaviness(block))
         page.row += 1
-    page.put(page.row, page.FIRST, "all blocks together", "head")
-    page.put(page.row, page.FIRST + 1, total, "cell")
+    page.put(page.row, page.FIRST, "all blocks together", "head tag")
+    page.put(page.row, page.FIRST + 1, total, "total").style = "total"
     page.put(page.row, page.FIRST + 2, f"the register holds {appraisal.count}", "head")

@@ -133,8 +133,8 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
         [
             Column("Vessel", 16),
             Column("First year short", 10),
-            Column(f"Current MAWP [{unit}]", number=True),
-            *(Column(f"{head} [{unit}]", number=True) for head in year_heads(years)),
+            Column(f"Current MAWP [{unit}]", number=True, least=8),
+            *(Column(f"{head} [{unit}]", number=True, least=8) for head in year_heads(years)),
         ]
     )
     first = page.row

@@ -200,7 +200,10 @@ def works() -> InventedAppraisal:
             projected_mawp_uncapped_mpa=1.4233,
             carry_to_on=date(2028, 6, 1),
             governing_pressure=head,
-            parts=(part(), part("bottom head", location("L-09"), shape="torispherical head", required_by="end")),
+            parts=(
+                part(),
+                part("bottom head", location("L-09"), shape="torispherical head", required_by="end"),
+            ),
             relief=(ReliefView("PSV-310", 1.6, None, date(2027, 9, 14)),),
             operating_until=date(2029, 1, 1),
             flags=(words.OVERDUE,),

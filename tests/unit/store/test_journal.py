@@ -21,7 +21,7 @@ from fleet.store.record import FIRST_PREVIOUS
 
 Fill = Callable[[Engine], dict[str, int]]
 DAY = dt.date(2020, 1, 2)
-KNOWN_DIGESTS = ["", "", ""]
+KNOWN_DIGESTS = ["297199e7c7f017c4", "57ba666f56658fa0", "d0e9d5087ed4eaf4"]
 SETTING = {"key": "floor", "value": "0.025 mm/year", "from_on": DAY}
 
 
@@ -39,7 +39,9 @@ def test_an_empty_journal_has_head_zero(engine: Engine) -> None:
 
 def test_an_entry_says_who_when_why_and_what_it_wrote(engine: Engine) -> None:
     at = dt.datetime(2026, 12, 1, 9, 30, tzinfo=dt.timezone(dt.timedelta(hours=2)))
-    with journal.writer(engine, task="setting set", by="A. Keel", role="engineer", why="policy", at=at) as entry:
+    with journal.writer(
+        engine, task="setting set", by="A. Keel", role="engineer", why="policy", at=at
+    ) as entry:
         assert entry.no == 1
         assert not entry.wrote
         assert entry.add(Setting, [SETTING, SETTING]) == [1, 2]
@@ -48,7 +50,12 @@ def test_an_entry_says_who_when_why_and_what_it_wrote(engine: Engine) -> None:
         [row] = journal.entries(conn)
         head = journal.head(conn)
     assert row["at"] == "2026-12-01T07:30:00.000000+00:00"
-    assert (row["by"], row["role"], row["why"], row["task"]) == ("A. Keel", "engineer", "policy", "setting set")
+    assert (row["by"], row["role"], row["why"], row["task"]) == (
+        "A. Keel",
+        "engineer",
+        "policy",
+        "setting set",
+    )
     assert row["program_version"] == fleet.__version__
     assert row["wrote"] == {"setting": [1, 2]}
     assert row["previous_hash"] == FIRST_PREVIOUS
