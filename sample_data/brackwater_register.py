@@ -203,7 +203,9 @@ def inspection_rows() -> list[Row]:
             dated = [("external", date(2019, 6, 20)), ("internal", date(2005, 6, 14))]
         for kind, day in sorted(set(dated), key=lambda pair: pair[1]):
             starting = v.columns.get(f"last_{kind}_on") if kind != "on-stream" else None
-            if v.in_service <= day <= (v.last or AS_OF) and not (starting and day >= starting):
+            if v.in_service <= day <= (v.last if v.last and v.block == "retired" else AS_OF) and not (
+                starting and day >= starting
+            ):
                 report = f"BW-IR-{day:%y%m%d}-{v.tag}"
                 who = "O. Lindqvist" if day.year < 2019 else "F. Mbeki"
                 rows.append(

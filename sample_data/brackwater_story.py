@@ -290,6 +290,26 @@ TROUBLES: tuple[Trouble, ...] = (
     Trouble("title and blank rows above the table", "D-401", "found by its header row", "", None, _file("2012-09-10", "utilities")),
 )  # fmt: skip
 
+LOADING_DOUBTS: tuple[tuple[str, str, int, str], ...] = (
+    (REGISTER, "nameplate blank", 1, "R-413"),
+    (_file("2012-05-07", "urea"), "suspected unit slip", 1, "D-216, written in mm under inches"),
+    (_file("2012-05-07", "urea"), "thickness far above nominal", 1, "the same reading"),
+    (_file("2018-03-05", "nitrate"), "apparent gain", 1, "T-304, one of the two swapped locations"),
+    (_file("2018-03-05", "nitrate"), "large loss", 1, "T-304, the other"),
+    (_file("2020-10-12", "nitrate"), "apparent gain", 1, "T-304, back in its place"),
+    (_file("2020-10-12", "nitrate"), "large loss", 1, "T-304, back in its place"),
+    (_file("2021-10-04", "urea"), "apparent gain", 1, "D-205"),
+    (_file("2024-04-08", "urea"), "large loss", 1, "D-205, back from the gain"),
+    (_file("2025-10-06", "ammonia"), "thickness far above nominal", 1, "D-126, the doubled echo"),
+    (
+        _file("2026-02-02", "utilities"),
+        "large loss",
+        17,
+        "D-402, corrected twice; the other nine fell by less than the error explains",
+    ),
+)
+"""The doubts with which the files load, one line a file and code; no file of the demo has a fault."""
+
 README_HEAD = """# Brackwater Works
 
 An invented coastal fertiliser works: thirty-odd pressure vessels, surveyed from 2011 to 2026, appraised on 2026-12-01.

@@ -470,7 +470,7 @@ UTILITIES: tuple[Vessel, ...] = (
             shell("course 1", 1100, 1600, 12, 0.06, 5, margin=2.5, noise=0.06),
             torispherical("top head", 1100, 1100, 110, 15, 0.04, 3, e=0.85),
         ),
-        "", _d("2027-02-17"), flags=("out of service",), block="out of service", troubles=("out of service", "old receiver with thin papers"), last=_d("2021-12-31"),
+        "", _d("2028-02-16"), flags=("out of service",), block="out of service", troubles=("out of service", "old receiver with thin papers"), last=_d("2021-12-31"),
         columns={"nameplate_mawp": None, "code_edition": None}),
 )  # fmt: skip
 

@@ -31,6 +31,7 @@ from brackwater_register import (
 from brackwater_story import (
     EVENTS,
     HARMLESS,
+    LOADING_DOUBTS,
     README_HEAD,
     REGISTER,
     SPOILT,
@@ -38,7 +39,7 @@ from brackwater_story import (
     TROUBLES,
     Survey,
     location,
-)
+)  # fmt: skip
 from brackwater_vessels import AS_OF, VESSELS, Vessel
 from brackwater_walls import PER_MM, Point, Row, noise, points, survey_rows
 from openpyxl import Workbook
@@ -181,11 +182,15 @@ def write_expected(path: Path, readings: dict[str, int]) -> None:
             "code": t.code,
         }
         troubles.append({k: x for k, x in row.items() if x})
+    doubts = [{"file": f, "code": c, "count": n} for f, c, n, _ in LOADING_DOUBTS]
     text = f"# What the appraisal of {AS_OF} should say. No standing: none is asserted.\n"
     text += f"as_of = {AS_OF}\n\n[counts]\n"
     text += "".join(f"{k} = {n}\n" for k, n in counts.items())
     text += "\n[readings_in_file]\n" + "".join(f'"{k}" = {n}\n' for k, n in readings.items())
-    path.write_text(text + tables("vessel", vessels) + tables("trouble", troubles), encoding="utf-8")
+    path.write_text(
+        text + tables("vessel", vessels) + tables("trouble", troubles) + tables("loading_doubt", doubts),
+        encoding="utf-8",
+    )
 
 
 def write_scan(path: Path) -> None:

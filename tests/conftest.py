@@ -14,9 +14,10 @@ from sqlalchemy import Engine, create_engine, text
 from sqlalchemy.engine import make_url
 from sqlalchemy.pool import NullPool
 
-from fleet.store import migrate, models
+from fleet.store import guard, migrate, models
 from fleet.store.engine import make_engine
 from fleet.store.journal import writer
+from fleet.store.record import FIRST_PREVIOUS
 
 POSTGRES = os.environ.get("FLEET_TEST_POSTGRES")
 ENGINES = ["sqlite", pytest.param("postgres", marks=pytest.mark.postgres)]
@@ -29,11 +30,11 @@ def _admin(statement: str) -> None:
         conn.execute(text(statement))
 
 
-def _postgres(template: str | None = None) -> Iterator[str]:
+def _postgres() -> Iterator[str]:
     if POSTGRES is None:
         pytest.skip("PostgreSQL: FLEET_TEST_POSTGRES gives no address")
     name = f"fleet_{uuid.uuid4().hex[:12]}"
-    _admin(f"CREATE DATABASE {name}" + (f" TEMPLATE {template}" if template else ""))
+    _admin(f"CREATE DATABASE {name}")
     yield make_url(POSTGRES).set(database=name).render_as_string(hide_password=False)
     _admin(f"DROP DATABASE {name} WITH (FORCE)")
 
@@ -46,10 +47,23 @@ def sqlite_template(tmp_path_factory: pytest.TempPathFactory) -> Path:
 
 
 @pytest.fixture(scope="session")
-def postgres_template() -> Iterator[str]:
+def postgres_shared() -> Iterator[str]:
+    """Give one PostgreSQL database for all tests: making one for each would take most of their time."""
     for address in _postgres():
         migrate.new_database(make_engine(address))
-        yield str(make_url(address).database)
+        yield address
+
+
+def _emptied(address: str) -> str:
+    """Empty the shared database and see that no test left it without its guard."""
+    engine = make_engine(address)
+    with engine.begin() as conn:
+        conn.exec_driver_sql("SET LOCAL session_replication_role = replica")
+        for table in models.Base.metadata.sorted_tables:
+            conn.exec_driver_sql(f"DELETE FROM {table.name}")
+        conn.exec_driver_sql(f"INSERT INTO journal_head (id, no, hash) VALUES (1, 0, '{FIRST_PREVIOUS}')")
+        assert guard.missing(conn) == []
+    return address
 
 
 @pytest.fixture(params=ENGINES)
@@ -69,7 +83,7 @@ def address(request: pytest.FixtureRequest, tmp_path: Path) -> Iterator[str]:
         template: Path = request.getfixturevalue("sqlite_template")
         yield str(shutil.copy(template, tmp_path / "fleet.db"))
     else:
-        yield from _postgres(request.getfixturevalue("postgres_template"))
+        yield _emptied(request.getfixturevalue("postgres_shared"))
 
 
 @pytest.fixture

@@ -245,7 +245,7 @@ def needs(inputs: Inputs, pressures: Pressures) -> Needs:
     missing = dict(missing_inputs(shape_of_rows))
     missing["static_head"] = ~given_shape & np.isnan(head)
     missing["required_thickness_given"] = given_shape & np.isnan(parts.required_thickness_given_mm[part])
-    no_formula = unsupported(shape_of_rows)
+    no_formula = unsupported(shape_of_rows) & ~given_shape
     lacks = np.zeros(len(part), dtype=np.bool_)
     for rows in missing.values():
         lacks |= rows

@@ -85,6 +85,17 @@ class RestartIndex:
         first = self.first[location]
         return until - first, total[until] - total[first]
 
+    def new_metal(self) -> Ints:
+        """Count the restarts with new metal of every location.
+
+        Returns
+        -------
+        ndarray
+            Shape (locations,) [count].
+        """
+        total = np.concatenate(([0], np.cumsum(self.metal))).astype(np.int64)
+        return total[self.first + self.number] - total[self.first]
+
     def begin(self, rank: int) -> Beginning:
         """Say how the histories of one rank begin.
 

@@ -284,11 +284,11 @@ def _least_day(appraisal: Appraisal, values: Floats, i: int) -> date | None:
 def _flags(appraisal: Appraisal, i: int, soon: bool, re_gauge: bool) -> tuple[str, ...]:
     due, as_of = appraisal.judged.due, appraisal.bench.as_of_day
     state = str(appraisal.inputs.vessels.state[i])
-    at_rest = state in {words.RETIRED, words.OUT_OF_SERVICE}
+    gone = state == words.RETIRED
     late = bool(due.internal_day[i] < as_of or due.external_day[i] < as_of)
     said = {
-        words.OVERDUE: late and not at_rest,
-        words.SURVEY_WITHIN_YEAR: soon and not at_rest,
+        words.OVERDUE: late and not gone,
+        words.SURVEY_WITHIN_YEAR: soon and not gone,
         words.RE_GAUGE: re_gauge,
         words.IDLE: state in {"idle", "idle protected"},
         words.OUT_OF_SERVICE: state == words.OUT_OF_SERVICE,

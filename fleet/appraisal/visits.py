@@ -60,7 +60,7 @@ def visits(inputs: Inputs, read: Strength, gave_wall: Bools, index: RestartIndex
     """
     count, part = len(inputs.locations), inputs.locations.part
     _, metal = index.before(read.location, read.day)
-    _, metal_now = index.before(np.arange(count, dtype=np.int64), np.full(count, np.inf))
+    metal_now = index.new_metal()
     present = metal == metal_now[read.location]
     seen, day = read.location[present], read.day[present]
     last = greatest_by(day, seen, count)

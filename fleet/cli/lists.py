@@ -79,11 +79,11 @@ def appraise(
 
         output.show(jsonout.appraise(made.appraisal))
     else:
-        from fleet import units as unit_systems
         from fleet.reports import text
+        from fleet.tasks.printing import display
 
         views = made.appraisal.views() if tags else None
-        output.say(text.appraise(made.appraisal, unit_systems.display(units), views))
+        output.say(text.appraise(made.appraisal, display(units), views))
 
 
 def show(
@@ -108,10 +108,10 @@ def show(
     if as_json:
         output.show(view.as_json())
     else:
-        from fleet import units as unit_systems
         from fleet.reports import text
+        from fleet.tasks.printing import display
 
-        output.say(text.show(view, unit_systems.display(units)))
+        output.say(text.show(view, display(units)))
 
 
 def due(
@@ -198,7 +198,7 @@ def derating(
 
         output.show(jsonout.derating(made.appraisal))
     else:
-        from fleet import units as unit_systems
         from fleet.reports import text
+        from fleet.tasks.printing import display
 
-        output.say(text.derating(made.appraisal, str(to), unit_systems.display(units)))
+        output.say(text.derating(made.appraisal, str(to), display(units)))

@@ -224,20 +224,16 @@ class Block:
         values = [self._values(column) for column in columns if column.field not in self.added]
         fields += list(self.added)
         values += [[text or None for text in texts] for texts in self.added.values()]
-        physical = [heading for heading in self.layout.headings.values() if heading.unit is not None]
+        written = self._written_columns()
         rows = []
         for row in which:
             doubts = tuple(notice for _, notice in self.row_doubts.get(row, ()))
-            written = {
-                heading.column.name: f"{show(self.raw[heading.column.name][row])} {heading.unit.spelling}"
-                for heading in physical
-                if heading.unit is not None and not math.isnan(self.numbers[heading.column.name][row])
-            }
+            as_written = {name: texts[row] for name, texts in written if texts[row]}
             because = self.query.get(row, "")
             rows.append(
                 Row(
                     {name: cells[row] for name, cells in zip(fields, values, strict=True)},
-                    written,
+                    as_written,
                     self.row_nos[row],
                     self.place.row(self.row_nos[row]),
                     doubts,
@@ -246,6 +242,21 @@ class Block:
                 )
             )
         return rows
+
+    def _written_columns(self) -> list[tuple[str, list[str]]]:
+        columns = []
+        for name, heading in self.layout.headings.items():
+            if heading.unit is None:
+                continue
+            given = (~np.isnan(self.numbers[name])).tolist()
+            seen: dict[Cell, str] = {}
+            texts = []
+            for cell, is_given in zip(self.raw[name], given, strict=True):
+                if is_given and cell not in seen:
+                    seen[cell] = f"{show(cell)} {heading.unit.spelling}"
+                texts.append(seen[cell] if is_given else "")
+            columns.append((name, texts))
+        return columns
 
     def _values(self, column: Column) -> list[Value]:
         if column.kind == "number":

@@ -17,7 +17,7 @@ from fleet.intake.known import History, KnownRegister, LocationKey, Recorded
 from fleet.intake.results import SurveyIntake
 from fleet.intake.thin import thin_readings
 
-_NEAR_MISSES = 50  # a nearest name is looked for that often; the search is slow on large registers
+_NEAR_MISSES = 20  # a nearest name is looked for that often; the search is slow on large registers
 
 
 def read_survey(

@@ -194,7 +194,7 @@ def _find_parents(load: Load, block: Block) -> None:
             searches += 1
             name = names[depth - 1]
             of = f" of vessel '{key[0]}'" if depth == 2 else ""
-            near = _nearest(load, parent) if searches <= 50 else None
+            near = _nearest(load, parent) if searches <= 20 else None
             remedy = f"did you mean '{near}'? Otherwise load the {name} too" if near else None
             block.fault(f"unknown {name}", row, name, f"{name} '{parent[-1]}'{of}", remedy)
             break

@@ -113,8 +113,12 @@ def _texts(block: Block, name: str) -> None:
 
 def _choices(block: Block, column: Column) -> None:
     choices = {choice.casefold(): choice for choice in column.choices}
+    known: dict[str, str] = {"": ""} | {choice: choice for choice in column.choices}
     texts = []
     for row, cell in enumerate(block.raw[column.name]):
+        if isinstance(cell, str) and cell in known:
+            texts.append(known[cell])
+            continue
         if is_blank(cell):
             texts.append("")
             continue

@@ -21,13 +21,15 @@ _MOST_CELLS = 50_000_000
 _TAG = rb"<(?:\w+:)?"
 _RELATION = re.compile(_TAG + rb"Relationship\b([^>]*)>")
 _SHEET = re.compile(_TAG + rb"sheet\b([^>]*)>")
-_ROW_NO = re.compile(_TAG + rb"""row\b[^>]*?\br=["'](\d+)["']""")
-_COLUMN_OF_CELL = re.compile(_TAG + rb"""c\b[^>]*?\br=["']([A-Z]{1,3})\d+["'][^>/]*>""")
+_ROW_NO = re.compile(rb"""row\b[^>]*?\br=["'](\d+)["']""")
+_FAR_COLUMN = re.compile(rb"""\br=["']([A-Z]{2,3})\d+["'](?:[^>]*[^>/])?>""")
 _ERROR = re.compile(_TAG + rb"""c\b([^>]*\bt=["']e["'][^>]*)>""")
 _FORMULA = re.compile(
     _TAG + rb"c\b([^>]*)>\s*" + _TAG + rb"f\b(?:[^>]*/>|[^>]*>[^<]*</(?:\w+:)?f>)"
     rb"\s*(" + _TAG + rb"v\b(?:[^>]*/>|[^>]*>([^<]*)<))?"
 )
+_FORMULA_TAG = re.compile(_TAG + rb"f[\s/>]")
+_FORMULA_MARKS = (b"<f>", b"<f ", b"<f/", b":f>", b":f ", b":f/")
 _VALUE = re.compile(_TAG + rb"v\b[^>]*>([^<]*)<")
 _MERGED = re.compile(_TAG + rb"""mergeCell\b[^>]*?\bref=["']([A-Z]+)(\d+):([A-Z]+)(\d+)["']""")
 _ATTRIBUTE = re.compile(rb"""([\w:]+)\s*=\s*(?:"([^"]*)"|'([^']*)')""")
@@ -77,9 +79,9 @@ def read_workbook(data: bytes, name: str) -> tuple[Sheet, ...]:
 def _sheet(place: Place, rows: list[list[Cell]], xml: bytes) -> Sheet:
     errors = dict(_error_cells(xml))
     unsaved = frozenset(_unsaved(xml)) - errors.keys()
-    merged = tuple(
-        (int(r1), _column_no(c1), int(r2), _column_no(c2)) for c1, r1, c2, r2 in _MERGED.findall(xml)
-    )
+    at = xml.find(b"mergeCell")
+    found = _MERGED.findall(xml, max(at - 64, 0)) if at >= 0 else []
+    merged = tuple((int(r1), _column_no(c1), int(r2), _column_no(c2)) for c1, r1, c2, r2 in found)
     last = max((row_no for row_no, _ in (*errors, *unsaved)), default=0)
     rows.extend([] for _ in range(last - len(rows)))
     return Sheet(place, rows, errors, unsaved, merged, typed=True)
@@ -135,8 +137,9 @@ def _attributes(tag: bytes) -> dict[str, str]:
 
 def _refuse_stray_cells(xml: bytes, place: Place) -> None:
     """Refuse a sheet that one stray cell makes too large to be laid out."""
-    rows = max((int(number) for number in _ROW_NO.findall(xml)), default=0)
-    columns = max((_column_no(letters) for letters in set(_COLUMN_OF_CELL.findall(xml))), default=0)
+    last = _ROW_NO.search(xml, max(xml.rfind(b"<row "), xml.rfind(b":row "), 0))
+    rows = int(last.group(1)) if last else 0
+    columns = max((_column_no(letters) for letters in set(_FAR_COLUMN.findall(xml))), default=26)
     if rows * columns > _MOST_CELLS:
         raise refusal("not a workbook", place.text, f"it reaches over {rows} rows and {columns} columns")
 
@@ -151,7 +154,12 @@ def _error_cells(xml: bytes) -> Iterator[tuple[tuple[int, int], str]]:
 
 
 def _unsaved(xml: bytes) -> Iterator[tuple[int, int]]:
-    for match in _FORMULA.finditer(xml):
+    if not any(mark in xml for mark in _FORMULA_MARKS):
+        return
+    for tag in _FORMULA_TAG.finditer(xml):
+        match = _FORMULA.match(xml, xml.rfind(b"<", 0, tag.start()))
+        if match is None:
+            continue
         _, value, text = match.groups()
         # A text formula may rightly give empty text; it then has a value, an empty one.
         is_empty_text = value is not None and _attributes(match.group(1)).get("t") == "str"

@@ -168,6 +168,8 @@ def plateau_sentence(view: VesselView, figures: Figures) -> str:
     """
     if view.clause_interval_years is None or view.half_life_on_plateau_years is None:
         return ""
+    if not view.clause_interval_years > 0:
+        return ""
     allowed, half = figures.years(view.clause_interval_years), figures.years(view.half_life_on_plateau_years)
     return (
         f"The clause allows an interval of {figures.with_unit(allowed, 'years')}; "

@@ -7,15 +7,13 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 from datetime import date, datetime
 
-from sqlalchemy import Engine
-
 import fleet
 from fleet.appraisal.appraise import Appraisal, appraise
 from fleet.appraisal.views import VesselView
 from fleet.errors import Refused, UsageProblem
 from fleet.reports.source import Grounds
 from fleet.rules import RuleValue, load_rule_set
-from fleet.store import facts, journal, models
+from fleet.store import Engine, facts, journal, models
 from fleet.tasks import settings as levels
 from fleet.tasks.assemble import fetch_inputs
 from fleet.tasks.names import fetch_names

@@ -96,19 +96,46 @@ class Compared:
     rows: tuple[tuple[str, Path, bool, Row], ...]
 
 
-def compare(reader: Reader, intake: Intake, *, names: Names, from_on: date | None) -> Compared:
-    """Compare the rows of a load with the record.
+RegisterRows = dict[str, dict[int, dict[str, Any]]]
+"""Table, then entity, to its row in force."""
+
+
+def register_rows(reader: Reader, from_on: date | None) -> RegisterRows:
+    """Fetch the rows that a load is compared with.
 
     Parameters
     ----------
     reader : Reader
         The record as of the day of the load [-].
+    from_on : date or None
+        The day of a change; None for a correction of what holds on the day of the load [date].
+
+    Returns
+    -------
+    RegisterRows
+    """
+    at = reader if from_on is None else Reader(reader.conn, as_of=from_on, known=reader.known)
+    found: RegisterRows = {}
+    for table, kind in KINDS.items():
+        columns = at.rows(kind.model)
+        rows = (dict(zip(columns, values, strict=True)) for values in zip(*columns.values(), strict=True))
+        found[table] = {row["entity_id"]: row for row in rows}
+    return found
+
+
+def compare(intake: Intake, in_force: RegisterRows, *, names: Names, from_on: date | None) -> Compared:
+    """Compare the rows of a load with the record.
+
+    Parameters
+    ----------
     intake : Intake
         The typed rows [-].
+    in_force : RegisterRows
+        The rows on record [-].
     names : Names
         The entities on record [-].
     from_on : date or None
-        The day of a change; None for a correction of what holds today [date].
+        The day of a change; None for a correction of what holds on the day of the load [date].
 
     Returns
     -------
@@ -118,11 +145,10 @@ def compare(reader: Reader, intake: Intake, *, names: Names, from_on: date | Non
     rows: list[tuple[str, Path, bool, Row]] = []
     unchanged = 0
     for table, kind in KINDS.items():
-        in_force = _in_force(reader, kind, from_on)
         for row in intake.rows(table):
             path = tuple(str(row.values[name]) for name in kind.names)
             entity = _entity(names, kind, path)
-            before = None if entity is None else in_force.get(entity)
+            before = None if entity is None else in_force[table].get(entity)
             rows.append((table, path, entity is None, row))
             values = _merged(table, kind, row, before)
             if before is not None and _says_the_same(values, before):
@@ -131,15 +157,6 @@ def compare(reader: Reader, intake: Intake, *, names: Names, from_on: date | Non
             values |= _dating(before, from_on)
             changes.append(Change(table, path, entity is None, values, row))
     return Compared(tuple(changes), unchanged, tuple(rows))
-
-
-def _in_force(reader: Reader, kind: Kind, from_on: date | None) -> dict[int, dict[str, Any]]:
-    """Give the row in force of every entity, on the day of the change or else on the day of the load."""
-    at = reader if from_on is None else Reader(reader.conn, as_of=from_on, known=reader.known)
-    columns = at.rows(kind.model)
-    names = list(columns)
-    rows = (dict(zip(names, values, strict=True)) for values in zip(*columns.values(), strict=True))
-    return {row["entity_id"]: row for row in rows}
 
 
 def _entity(names: Names, kind: Kind, path: Path) -> int | None:

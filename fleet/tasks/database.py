@@ -5,10 +5,8 @@ from __future__ import annotations
 from dataclasses import dataclass
 from pathlib import Path
 
-from sqlalchemy import Engine
-
+from fleet.store import Engine, migrate
 from fleet.store import engine as engines
-from fleet.store import migrate
 
 
 @dataclass(frozen=True)

@@ -12,9 +12,8 @@ from datetime import date
 from pathlib import Path
 from typing import Any
 
-from sqlalchemy import Engine
-
 from fleet.errors import Refused
+from fleet.store import Engine
 from fleet.store.places import data_folder
 from fleet.tasks import events
 from fleet.tasks.appraisals import Appraised, appraise_fleet, save_appraisal

@@ -11,11 +11,9 @@ from collections.abc import Mapping, Sequence
 from datetime import date, datetime
 from typing import Any
 
-from sqlalchemy import Engine
-
 from fleet.errors import Refused
 from fleet.intake.tables import ITEM_STATES, VESSEL_STATES
-from fleet.store import journal, models
+from fleet.store import Engine, journal, models
 from fleet.store.record import DECISION_KINDS, RESTART_KINDS, RESTART_WHATS
 from fleet.tasks.names import Names, fetch_names
 from fleet.tasks.reader import Reader

@@ -6,11 +6,9 @@ from dataclasses import dataclass
 from datetime import date
 from typing import Any
 
-from sqlalchemy import Connection, Engine
-
 from fleet.errors import CheckFailed
+from fleet.store import Connection, Engine, facts, guard, journal, models
 from fleet.store import engine as engines
-from fleet.store import facts, guard, journal, models
 from fleet.tasks.names import fetch_names
 from fleet.tasks.reader import Reader
 

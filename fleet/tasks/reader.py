@@ -5,9 +5,7 @@ from __future__ import annotations
 from datetime import date, datetime
 from typing import Any
 
-from sqlalchemy import Connection, select
-
-from fleet.store import facts, journal, models
+from fleet.store import Connection, facts, journal, models
 from fleet.store.record import FIRST_PREVIOUS
 
 Columns = dict[str, list[Any]]
@@ -79,5 +77,8 @@ class Reader:
         """
         if self.known == 0:
             return FIRST_PREVIOUS
-        statement = select(models.Journal.hash).where(models.Journal.no == self.known)
-        return str(self.conn.execute(statement).scalar_one())
+        last = journal.head(self.conn)
+        if last.no == self.known:
+            return last.hash
+        (entry,) = journal.entries(self.conn, numbers=[self.known])
+        return str(entry["hash"])

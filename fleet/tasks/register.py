@@ -9,13 +9,11 @@ from datetime import date, datetime
 from pathlib import Path as FilePath
 from typing import Any
 
-from sqlalchemy import Engine
-
 from fleet.errors import FileRefused, Refused
 from fleet.intake.results import Intake, ParkedRow
 from fleet.rules import DESIGN_CODES, rule_set_names
-from fleet.store import journal, models
-from fleet.tasks.changes import KINDS, Change, Compared, Path, compare
+from fleet.store import Engine, journal, models
+from fleet.tasks.changes import KINDS, Change, Compared, Path, compare, register_rows
 from fleet.tasks.files import Waiting, new_parked, record_files, settled, waiting_on_record
 from fleet.tasks.known import OnRecord, fetch_on_record
 from fleet.tasks.names import Names
@@ -179,16 +177,21 @@ def load_register(
 
     with engine.connect() as conn:
         record = fetch_on_record(Reader.at(conn, as_of=today))
-        intake = read_register(
-            files,
-            known=record.register,
-            today=today,
-            rule_sets=rule_set_names(),
-            design_codes=tuple(DESIGN_CODES),
-            park=park,
-        )
-        before = tuple(file.name for file in intake.files if file.already_loaded)
-        plan = _plan(intake, record, by=by, today=today, from_on=from_on)
+        in_force = register_rows(record.reader, from_on)
+        waiting = waiting_on_record(record.reader)
+        record.reader.rows(models.Doubt)
+    # The connection is closed: nobody has to wait while the files are checked.
+    intake = read_register(
+        files,
+        known=record.register,
+        today=today,
+        rule_sets=rule_set_names(),
+        design_codes=tuple(DESIGN_CODES),
+        park=park,
+    )
+    before = tuple(file.name for file in intake.files if file.already_loaded)
+    compared = compare(intake, in_force, names=record.names, from_on=from_on)
+    plan = _plan(intake, record, compared, waiting, by=by, today=today)
     number = None if dry_run or plan.empty else _write(engine, plan, record, by=by, at=at)
     return RegisterLoaded(
         wrote=plan.counts,
@@ -215,12 +218,12 @@ def _refusal(intake: Intake) -> FileRefused:
     )
 
 
-def _plan(intake: Intake, record: OnRecord, *, by: str, today: date, from_on: date | None) -> _Plan:
-    compared = compare(record.reader, intake, names=record.names, from_on=from_on)
+def _plan(
+    intake: Intake, record: OnRecord, compared: Compared, waiting: list[Waiting], *, by: str, today: date
+) -> _Plan:
     starting = starting_values(
         compared.rows, intake.rows("inspections"), known=record.register, by=by, today=today
     )
-    waiting = waiting_on_record(record.reader)
     told = [(_about(change), one) for change in compared.changes for one in change.row.doubts]
     told += [((str(row.values["vessel"]),), one) for row in intake.rows("inspections") for one in row.doubts]
     told = [(path, one) for path, one in told if one.code not in NOT_KEPT]

@@ -8,11 +8,9 @@ from datetime import date, datetime
 from pathlib import Path
 from typing import Any
 
-from sqlalchemy import Engine
-
 from fleet.errors import FileRefused
 from fleet.intake.results import Row, SurveyIntake
-from fleet.store import journal, models
+from fleet.store import Engine, journal, models
 from fleet.tasks.files import new_parked, record_files, settled, waiting_on_record
 from fleet.tasks.known import OnRecord, fetch_history, fetch_on_record
 from fleet.tasks.reader import Reader
@@ -90,7 +88,9 @@ class SurveysLoaded:
     @property
     def doubts_of_loaded(self) -> tuple[Notice, ...]:
         """The doubts of the files that were let in."""
-        return tuple(one for file in self.files if not file.refused | file.already_loaded for one in file.doubts)
+        return tuple(
+            one for file in self.files if not file.refused | file.already_loaded for one in file.doubts
+        )
 
     @property
     def refused(self) -> FileRefused | None:
@@ -162,7 +162,9 @@ def thin_text(thin: Sequence[Thin], units: str) -> str:
         ]
         place = " / ".join(str(one[name]) for name in ("vessel", "part", "location"))
         wall = shown.text("length", one["wall_mm"], "down")
-        lines.append(f"  {place}  {one['taken_on'] or 'no date'}  wall {wall}, at or below {' and '.join(limits)}")
+        lines.append(
+            f"  {place}  {one['taken_on'] or 'no date'}  wall {wall}, at or below {' and '.join(limits)}"
+        )
         lines.append(f"    {one['where']}")
     return "\n".join(lines)
 
@@ -230,8 +232,9 @@ def _load_one(
     with engine.connect() as conn:
         record = fetch_on_record(Reader.at(conn, as_of=today), required=True)
         history = fetch_history(record)
-        intake = read_survey(path, known=record.register, history=history, today=today, park=park)
         waiting = waiting_on_record(record.reader)
+    # The connection is closed: nobody has to wait while the file is checked.
+    intake = read_survey(path, known=record.register, history=history, today=today, park=park)
     rows = intake.rows("readings")
     parked, ended = new_parked(intake.parked, waiting), settled(waiting, intake)
     number = None

@@ -254,7 +254,10 @@ def test_events_name_what_the_register_knows() -> None:
 
 def test_the_generator_writes_these_very_files(tmp_path: Path) -> None:
     done = subprocess.run(
-        [sys.executable, WORKS / "make_brackwater.py", tmp_path], capture_output=True, text=True, check=False
+        [sys.executable, "-B", WORKS / "make_brackwater.py", tmp_path],
+        capture_output=True,
+        text=True,
+        check=False,
     )
     assert done.returncode == 0, done.stderr
     texts = [p.relative_to(tmp_path) for p in tmp_path.rglob("*") if p.suffix in {".csv", ".toml", ".md"}]
@@ -271,7 +274,10 @@ def test_the_generator_writes_these_very_files(tmp_path: Path) -> None:
 
 def test_the_second_reckoning_agrees_with_what_is_meant() -> None:
     done = subprocess.run(
-        [sys.executable, WORKS / "make_brackwater.py", "--check"], capture_output=True, text=True, check=False
+        [sys.executable, "-B", WORKS / "make_brackwater.py", "--check"],
+        capture_output=True,
+        text=True,
+        check=False,
     )
     assert done.returncode == 0, done.stdout + done.stderr
 
@@ -290,6 +296,40 @@ def test_every_trouble_is_named_in_the_readme_and_found_by_one_test() -> None:
         assert vessel(t["vessel"])
     for name in {name for v in expected()["vessel"] for name in v["troubles"]}:
         assert name in meant
+
+
+def test_the_files_hold_the_doubts_that_are_listed_and_no_other() -> None:
+    nominal = {
+        (row["vessel"], row["part"]): row["nominal_thickness"] + (row["lining_thickness"] or 0)
+        for row in register()["parts"]
+    }
+    began = {(e["vessel"], spot): e["happened_on"] for e in events()["restart"] for spot in e["locations"]}
+    found: dict[tuple[str, str], int] = {}
+    before: dict[tuple[str, str], list[tuple[date, float]]] = {}
+    for row in sorted((r for r in readings() if "mm" in r), key=lambda r: r["taken_on"]):
+        key = (row["vessel"], row["location"])
+        if row["mm"] > 1.25 * nominal[row["vessel"], row["part"]]:
+            code = (row["file"], "thickness far above nominal")
+            found[code] = found.get(code, 0) + 1
+            continue
+        if key in began and row["taken_on"] >= began[key]:
+            before[key] = []
+            del began[key]
+        past = before.setdefault(key, [])
+        gain = row["mm"] - past[-1][1] if past else 0.0
+        usual = (
+            5 * max(rate(past), 0) * (row["taken_on"] - past[-1][0]).days / 365.25
+            if len(past) > 1
+            else math.inf
+        )
+        if gain > DOUBTFUL_MM or -gain > max(DOUBTFUL_MM, usual):
+            code = (row["file"], "apparent gain" if gain > 0 else "large loss")
+            found[code] = found.get(code, 0) + 1
+        past.append((row["taken_on"], row["mm"]))
+    listed = {(d["file"], d["code"]): d["count"] for d in expected()["loading_doubt"]}
+    assert found == {
+        k: n for k, n in listed.items() if k[1] not in {"nameplate blank", "suspected unit slip"}
+    }
 
 
 # ----------------------------------------------------------------------------------------------------

@@ -34,6 +34,7 @@ sizes = st.floats(100.0, 6000.0)
 nominals = st.floats(0.004, 0.19)  # of the diameter: from thin to well beyond the limits of the thin forms
 efficiencies = st.floats(0.35, 1.0)
 stresses = st.floats(40.0, 260.0)
+pairs = st.tuples(efficiencies, efficiencies)
 
 
 def rows(
@@ -59,62 +60,57 @@ def figures(g: Geometry, rated: Rated) -> list[NDArray[np.float64]]:
     return found
 
 
+KINDS = [(side, year) for side in SIDES for year in YEARS]
+SIDE_OF = np.repeat([side for side, _ in KINDS], 120)
+YEAR_OF = np.repeat([year for _, year in KINDS], 120)
+
+
+def by_kind(values: NDArray[np.float64]) -> list[NDArray[np.float64]]:
+    """Take the figures apart again, one run of 120 for every side and edition."""
+    return list(values.reshape(len(KINDS), 120))
+
+
 @pytest.mark.parametrize(("code", "shape"), CASES)
-@given(
-    size=sizes,
-    nominal=nominals,
-    s=stresses,
-    e=st.tuples(efficiencies, efficiencies),
-    top=st.floats(0.01, 0.34),
-)
+@given(size=sizes, nominal=nominals, s=stresses, e=pairs, top=st.floats(0.01, 0.34))
 @settings(max_examples=12, deadline=None)
 def test_more_wall_never_lowers_the_pressure(
     code: str, shape: str, size: float, nominal: float, s: float, e: tuple[float, float], top: float
 ) -> None:
-    wall = np.linspace(-0.01, top, 120) * size
-    for side in SIDES:
-        for year in YEARS:
-            g = rows(code, shape, size, nominal, s, e, len(wall), loss_side=side, edition_year=year)
-            for pressure in figures(g, allowable_pressure(g, wall)):
-                known = pressure[~np.isnan(pressure)]
-                assert len(known) > 0
-                assert np.all(np.diff(known) >= -1e-12 * known[1:]), (side, year)
-                # What is withheld lies beyond what is known, never in between.
-                assert not np.isnan(pressure[: len(known)]).any(), (side, year)
+    wall = np.tile(np.linspace(-0.01, top, 120) * size, len(KINDS))
+    g = rows(code, shape, size, nominal, s, e, len(wall), loss_side=SIDE_OF, edition_year=YEAR_OF)
+    for figure in figures(g, allowable_pressure(g, wall)):
+        for kind, pressure in zip(KINDS, by_kind(figure), strict=True):
+            known = pressure[~np.isnan(pressure)]
+            assert len(known) > 0
+            assert np.all(np.diff(known) >= -1e-12 * known[1:]), kind
+            # What is withheld lies beyond what is known, never in between.
+            assert not np.isnan(pressure[: len(known)]).any(), kind
 
 
 @pytest.mark.parametrize(("code", "shape"), CASES)
-@given(
-    size=sizes,
-    nominal=nominals,
-    s=stresses,
-    e=st.tuples(efficiencies, efficiencies),
-    least=st.floats(1e-4, 0.2),
-)
+@given(size=sizes, nominal=nominals, s=stresses, e=pairs, least=st.floats(1e-4, 0.2))
 @settings(max_examples=12, deadline=None)
 def test_the_required_wall_holds_the_pressure(
     code: str, shape: str, size: float, nominal: float, s: float, e: tuple[float, float], least: float
 ) -> None:
     # up to 1.2 times the stress: across the thin and thick forms of every edition
-    pressure = np.linspace(least, 1.2, 120) * s * e[0]
-    for side in SIDES:
-        for year in YEARS:
-            g = rows(code, shape, size, nominal, s, e, len(pressure), loss_side=side, edition_year=year)
-            walls = figures(g, required_wall(g, pressure))
-            for number, wall in enumerate(walls):
-                known = ~np.isnan(wall)
-                assert np.all(np.diff(wall[known]) >= 0), (side, year)
-                back = figures(g, allowable_pressure(g, wall))[number]
-                assert not np.isnan(back[known]).any(), (side, year)
-                excess = back[known] / pressure[known] - 1
-                assert np.all(excess >= -1e-9), (side, year)
-                # A wall that carries more is one at which the thick form starts, and no lesser wall would do.
-                step = excess > 1e-9
-                if step.any():
-                    assert code == "asme8-1"
-                    assert shape in {"cylinder", "nozzle neck", "sphere", "hemispherical head"}
-                    below = figures(g, allowable_pressure(g, wall * (1 - 1e-9)))[number]
-                    assert np.all(below[known][step] < pressure[known][step])
+    pressure = np.tile(np.linspace(least, 1.2, 120) * s * e[0], len(KINDS))
+    g = rows(code, shape, size, nominal, s, e, len(pressure), loss_side=SIDE_OF, edition_year=YEAR_OF)
+    for number, wall in enumerate(figures(g, required_wall(g, pressure))):
+        for kind, run in zip(KINDS, by_kind(wall), strict=True):
+            assert np.all(np.diff(run[~np.isnan(run)]) >= 0), kind
+        known = ~np.isnan(wall)
+        back = figures(g, allowable_pressure(g, wall))[number]
+        assert not np.isnan(back[known]).any()
+        excess = back[known] / pressure[known] - 1
+        assert np.all(excess >= -1e-9)
+        # A wall that carries more is one at which the thick form starts, and no lesser wall would do.
+        step = excess > 1e-9
+        if step.any():
+            assert code == "asme8-1"
+            assert shape in {"cylinder", "nozzle neck", "sphere", "hemispherical head"}
+            below = figures(g, allowable_pressure(g, wall * (1 - 1e-9)))[number]
+            assert np.all(below[known][step] < pressure[known][step])
 
 
 @pytest.mark.parametrize(("code", "shape"), CASES)
@@ -122,7 +118,7 @@ def test_the_required_wall_holds_the_pressure(
     size=sizes,
     nominal=nominals,
     s=stresses,
-    e=st.tuples(efficiencies, efficiencies),
+    e=pairs,
     part=st.floats(0.1, 1.0),
 )
 @settings(max_examples=10, deadline=None)
@@ -142,7 +138,7 @@ def test_loss_from_inside_is_never_better_than_loss_from_outside(
 
 
 @pytest.mark.parametrize(("code", "shape"), [case for case in CASES if case[1] != "flat cover"])
-@given(size=sizes, nominal=st.floats(0.004, 0.1), s=stresses, e=st.tuples(efficiencies, efficiencies))
+@given(size=sizes, nominal=st.floats(0.004, 0.1), s=stresses, e=pairs)
 @settings(max_examples=10, deadline=None)
 def test_without_loss_inside_and_outside_dimensions_give_the_same(
     code: str, shape: str, size: float, nominal: float, s: float, e: tuple[float, float]
@@ -169,7 +165,7 @@ def test_without_loss_inside_and_outside_dimensions_give_the_same(
             np.testing.assert_allclose(one, other, rtol=1e-12)
 
 
-@given(s=stresses, e=st.tuples(efficiencies, efficiencies), part=st.floats(0.05, 1.1))
+@given(s=stresses, e=pairs, part=st.floats(0.05, 1.1))
 @settings(max_examples=20, deadline=None)
 def test_an_unknown_edition_never_gives_more_than_a_known_one(
     s: float, e: tuple[float, float], part: float
@@ -219,8 +215,10 @@ PAIRS = sorted(
 def test_every_wall_form_undoes_its_pressure_form(
     wall: str, pressure: str, x: float, s: float, e: float
 ) -> None:
-    values = {"S": s, "E": e, "sigma": s, "R": 700.0, "Ro": 700.0, "L": 700.0, "Lo": 700.0, "D": 1400.0, "Do": 1400.0, "M": 1.6,
-              "K": 1.2, "alpha": 20.0, "C": 0.2, "d": 600.0, "a": 700.0}  # fmt: skip
+    values = {
+        "S": s, "E": e, "sigma": s, "R": 700.0, "Ro": 700.0, "L": 700.0, "Lo": 700.0, "D": 1400.0, "Do": 1400.0,
+        "M": 1.6, "K": 1.2, "alpha": 20.0, "C": 0.2, "d": 600.0, "a": 700.0,
+    }  # fmt: skip
     of_wall, of_pressure = REGISTER[wall], REGISTER[pressure]
     t = x * 700.0
     p = of_pressure(**{name: t if name == "t" else values[name] for name in of_pressure.arguments})

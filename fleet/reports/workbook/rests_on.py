@@ -45,7 +45,7 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
         for part in view.parts:
             for place in part.locations or (None,):
                 drawn += 1
-                page.line(_row(view, part, place, figures), standing=view.standing)
+                page.line(_row(view, part, place, figures), standing=place.standing if place else view.standing)
     if not drawn:
         page.none()
     turns = tuple(f"{head} [{figures.unit(kind)}]" for head, kind in TURNS)
@@ -68,8 +68,8 @@ def columns(figures: Figures) -> list[Column]:
     return [
         Column("Vessel", 14),
         Column("Part", 16),
-        Column("Location", 12),
-        Column("Shape", 14, group="The place"),
+        Column("Location", 14),
+        Column("Shape", 19, group="The place"),
         Column(POSITION, 18),
         Column("Standing of the location", 12),
         Column("Times observed", number=True, group="Readings"),
@@ -101,7 +101,7 @@ def columns(figures: Figures) -> list[Column]:
         Column(f"MAWP today {pressure}", number=True),
         Column(f"Projected MAWP {pressure}", number=True),
         Column(f"Projected, uncapped {pressure}", number=True),
-        Column("Pressure by clause", 26),
+        Column("Pressure by clause", 44),
         Column(DOUBTS, 30),
     ]
 
@@ -121,7 +121,7 @@ def _row(view: VesselView, part: PartView, place: LocationView | None, figures: 
         )
         nothing = [NONE] * 14
         return [
-            *(view.vessel, part.part, "no location laid out", part.shape, "", NONE, 0),
+            *(view.vessel, part.part, "none laid out", part.shape, "", NONE, 0),
             *nothing,
             *needs,
             *datum,

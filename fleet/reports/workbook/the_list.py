@@ -21,6 +21,8 @@ WALL = "Governs life"
 """Heading of the column with which the third printed page begins."""
 OPERATING = "Operating"
 """Heading, but for its unit, of the column with which the second printed page begins."""
+PLACE_LINE = 18
+"""Letters of a place that stand on one line [count]."""
 WHY, IN_WORDS, CLAUSE = "Why", "Relief and operation in words", "Required by clause"
 
 
@@ -94,7 +96,7 @@ def columns(figures: Figures) -> list[Column]:
         Column("Retirement", 11),
         Column("Internal or on-stream due", 11),
         Column("External due", 11),
-        Column("Governs due", 12),
+        Column("Governs due", 18),
         Column("Interval [years]", number=True),
         Column("Interval in words", 20),
         Column(WALL, 18, group="The wall at the place that governs life"),
@@ -231,7 +233,7 @@ def _rests_on(view: VesselView, place: LocationView | None, figures: Figures) ->
 
 
 def place_words(place: Place | None) -> str:
-    """Write a place on two lines, so that a location is never broken at its hyphen.
+    """Write a place, a long one on two lines, so that a location is never broken at its hyphen.
 
     Parameters
     ----------
@@ -244,11 +246,12 @@ def place_words(place: Place | None) -> str:
 
     Examples
     --------
-    >>> print(place_words(Place("top head", "L-07")))
-    top head /
+    >>> print(place_words(Place("manway neck N17", "L-07")))
+    manway neck N17 /
     L-07
     """
-    return NONE if place is None else str(place).replace(" / ", " /\n")
+    said = NONE if place is None else str(place)
+    return said if len(said) <= PLACE_LINE else said.replace(" / ", " /\n")
 
 
 def _governs_due(view: VesselView) -> str:

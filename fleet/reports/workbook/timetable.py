@@ -37,13 +37,16 @@ class Row:
     carried_mpa : ndarray
         What its wall carries on each date [MPa].
     first_short : int or None
-        Number of the first date on which that is below the current MAWP, or as many as there are dates if it
-        never is; None where no figure can be had [count].
+        Number of the first date on which the current MAWP does not hold, or as many as there are dates if it
+        always does; None where nobody can say [count].
+    by_wall : bool
+        Whether the wall falls below a minimum before the pressure it carries falls short [-].
     """
 
     view: VesselView
     carried_mpa: NDArray[np.float64]
     first_short: int | None
+    by_wall: bool = False
 
     def says(self, years: Sequence[date]) -> str:
         """Say the first year short in words.
@@ -58,8 +61,10 @@ class Row:
         str
         """
         if self.first_short is None:
-            return "no figure"
-        return "holds" if self.first_short == len(years) else str(years[self.first_short].year)
+            return words.NO_VERDICT if self.view.standing == words.NO_VERDICT else "no figure"
+        if self.first_short == len(years):
+            return "holds"
+        return f"{years[self.first_short].year}{', by its wall' if self.by_wall else ''}"
 
 
 def rows(views: Sequence[VesselView], table: TimetableLike) -> list[Row]:
@@ -75,13 +80,14 @@ def rows(views: Sequence[VesselView], table: TimetableLike) -> list[Row]:
     Returns
     -------
     list of Row
-        Those that drop in the same year by how far they have dropped; those without a figure last.
+        Those that drop in the same year by how far they have dropped; those of which nobody can say last.
     """
+    years = tuple(table.years)
     made = []
     for number, view in enumerate(views):
         carried = np.asarray(table.mawp_mpa[number], dtype=np.float64)
         current = float(table.current_mawp_mpa[number])
-        made.append((Row(view, carried, _first_short(carried, current)), current))
+        made.append((_row(view, carried, current, years), current))
 
     def order(pair: tuple[Row, float]) -> tuple[bool, int, float]:
         row, current = pair
@@ -91,6 +97,18 @@ def rows(views: Sequence[VesselView], table: TimetableLike) -> list[Row]:
         return False, row.first_short, float(row.carried_mpa[at]) / current
 
     return [row for row, _ in sorted(made, key=order)]
+
+
+def _row(view: VesselView, carried: NDArray[np.float64], current: float, years: Sequence[date]) -> Row:
+    """Find the first date that falls short by its pressure or by its wall; what is not known is not held."""
+    by_pressure = _first_short(carried, current)
+    if by_pressure is None or view.standing == words.NO_VERDICT:
+        return Row(view, carried, None)
+    until = view.rating_holds_until
+    by_wall = next((k for k, day in enumerate(years) if until is not None and day > until), len(years))
+    if view.standing == words.BELOW_REQUIRED:
+        by_wall = 0
+    return Row(view, carried, min(by_pressure, by_wall), by_wall < by_pressure)
 
 
 def _first_short(carried: NDArray[np.float64], current: float) -> int | None:
@@ -128,11 +146,12 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
         "Timetable",
         f"What each wall carries on {_day_of(years)} of each year [{unit}], capped as on the list.",
         "Left of and below the heavy stair the current MAWP holds; right of and above it, it does not.",
+        "By its wall: a minimum that is no matter of pressure is reached first. No verdict: measured parts only.",
     )
     page.heads(
         [
             Column("Vessel", 16),
-            Column("First year short", 10),
+            Column("First year short", 18),
             Column(f"Current MAWP [{unit}]", number=True, least=8),
             *(Column(f"{head} [{unit}]", number=True, least=8) for head in year_heads(years)),
         ]
@@ -199,7 +218,12 @@ def _say_it(page: Page, made: Sequence[Row], years: Sequence[date]) -> None:
     _said(
         page, f"Hold to {years[-1].isoformat()}" if years else "Hold", _holding(made, len(years)), len(years)
     )
-    _said(page, "No figure", [row.view.vessel for row in made if row.first_short is None], len(years))
+    _said(
+        page,
+        "No figure or no verdict",
+        [row.view.vessel for row in made if row.first_short is None],
+        len(years),
+    )
     page.put(page.row, page.FIRST, f"{len(made)} vessels in all. {words.CAUTION}", "note")
 
 

@@ -9,7 +9,7 @@ from __future__ import annotations
 from datetime import date, timedelta
 
 import pytest
-from invented import Fleet, codes, location_of, one_cylinder, ordinal
+from invented import location_of, one_cylinder, ordinal
 
 NEEDED = 514 / 100.4  # 5.1195…
 
@@ -46,7 +46,9 @@ def test_rule_0_1_a_decision_after_the_as_of_date_does_not_count() -> None:
 
 def test_rule_0_2_a_year_is_365_and_a_quarter_days() -> None:
     # 2021-01-01 to 2022-01-01 are 365 days, 0.9993 years
-    rate = location_of(one_cylinder(("2021-01-01", 12.0), ("2022-01-01", 10.0)).view()).long_term_rate_mm_per_year
+    rate = location_of(
+        one_cylinder(("2021-01-01", 12.0), ("2022-01-01", 10.0)).view()
+    ).long_term_rate_mm_per_year
     assert rate == pytest.approx(2.0 * 365.25 / 365, rel=1e-12)
 
 
@@ -92,7 +94,9 @@ def test_rule_0_5_no_loss_is_given_back_when_the_carry_to_date_lies_before_the_l
 
 
 def test_rule_0_5_life_left_is_never_negative() -> None:
-    view = one_cylinder(("2016-01-01", 13.6), ("2020-01-01", 5.6)).view("2026-01-01")  # 2 mm/year, gone in 2020
+    view = one_cylinder(("2016-01-01", 13.6), ("2020-01-01", 5.6)).view(
+        "2026-01-01"
+    )  # 2 mm/year, gone in 2020
     assert view.retirement_on is not None
     assert view.retirement_on < date(2026, 1, 1)
     assert view.life_left_years == 0.0
@@ -110,14 +114,3 @@ def test_rule_0_6_the_standing_comes_from_unrounded_figures(wall: float, standin
     # both walls print as 5.12 mm
     fleet = one_cylinder(("2020-01-01", 5.2), ("2024-01-01", wall), next_survey_day=ordinal("2024-01-01"))
     assert fleet.view("2024-01-01").standing == standing
-
-
-def test_rule_0_1_a_query_of_the_as_of_date_is_what_the_caller_gives() -> None:
-    # choosing what is in force is the caller's task; the appraisal takes the state it is given
-    fleet = Fleet()
-    fleet.vessel(state="out of service")
-    fleet.part()
-    fleet.location()
-    fleet.read(0, *LINE)
-    assert "out of service" in fleet.view().flags
-    assert codes(fleet.view().doubts) == []

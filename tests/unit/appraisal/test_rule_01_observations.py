@@ -9,6 +9,7 @@ from datetime import date
 
 import pytest
 from invented import Fleet, codes, location_of, one_cylinder, part_of
+
 from fleet.appraisal.inputs import DEFAULT_READING_ERROR_MM
 from fleet.appraisal.views import LocationView
 
@@ -29,7 +30,9 @@ def with_status(status: str, queried: tuple[str, float], *rest: tuple[str, float
 
 
 @pytest.mark.parametrize(("second", "observations"), [("2020-03-31", 1), ("2020-04-01", 2)])
-def test_rule_1_1_readings_up_to_90_days_after_the_first_are_one_observation(second: str, observations: int) -> None:
+def test_rule_1_1_readings_up_to_90_days_after_the_first_are_one_observation(
+    second: str, observations: int
+) -> None:
     assert place(("2020-01-01", 12.0), (second, 12.0)).observations == observations  # 90 and 91 days
 
 
@@ -59,7 +62,9 @@ def test_rule_1_2_an_observation_is_the_least_of_its_readings() -> None:
 
 
 def test_rule_1_3_it_is_dated_the_day_its_least_reading_was_taken() -> None:
-    assert place(("2020-01-01", 12.0), ("2020-01-10", 11.7), ("2020-01-20", 11.9)).last_on == date(2020, 1, 10)
+    assert place(("2020-01-01", 12.0), ("2020-01-10", 11.7), ("2020-01-20", 11.9)).last_on == date(
+        2020, 1, 10
+    )
 
 
 def test_rule_1_3_of_equal_readings_the_earliest_gives_the_day() -> None:

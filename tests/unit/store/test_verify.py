@@ -2,11 +2,12 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
+import contextlib
+from collections.abc import Callable, Iterator
 from typing import Any
 
 import pytest
-from sqlalchemy import Boolean, Connection, Date, Double, Engine, Integer, MetaData, inspect
+from sqlalchemy import Boolean, Connection, Date, Double, Engine, Integer, inspect
 
 from fleet.store import journal
 from fleet.store.journal import Finding
@@ -15,8 +16,9 @@ from fleet.store.models import FACTS, Journal, table_of
 Fill = Callable[[Engine], dict[str, int]]
 
 
-def _unguarded(engine: Engine, *statements: str) -> None:
-    """Do what the owner of the file could do: drop guard and constraints, then change the record."""
+@contextlib.contextmanager
+def _stripped(engine: Engine) -> Iterator[Connection]:
+    """Do what the owner of the database could do: switch off guard and references."""
     with engine.connect() as conn:
         if engine.dialect.name == "sqlite":
             raw: Any = conn.connection.driver_connection
@@ -26,22 +28,15 @@ def _unguarded(engine: Engine, *statements: str) -> None:
             for (name,) in names:
                 raw.execute(f"DROP TRIGGER {name}")
         else:
-            _strip(conn)
+            conn.exec_driver_sql("SET session_replication_role = replica")  # neither guard nor references
+        yield conn
+
+
+def _unguarded(engine: Engine, *statements: str) -> None:
+    with _stripped(engine) as conn:
         for statement in statements:
             conn.exec_driver_sql(statement)
         conn.commit()
-
-
-def _strip(conn: Connection) -> None:
-    meta = MetaData()
-    meta.reflect(conn)
-    conn.exec_driver_sql("SET session_replication_role = replica")  # neither guard nor references
-    for table in meta.sorted_tables:
-        for check in inspect(conn).get_check_constraints(table.name):
-            conn.exec_driver_sql(f"ALTER TABLE {table.name} DROP CONSTRAINT {check['name']}")
-        for column in table.columns:
-            if not column.nullable and not column.primary_key:
-                conn.exec_driver_sql(f'ALTER TABLE {table.name} ALTER COLUMN "{column.name}" DROP NOT NULL')
 
 
 def _found(engine: Engine, against: str | None = None) -> list[Finding]:
@@ -69,25 +64,23 @@ def _other(column: Any) -> str:
 def test_any_altered_field_of_any_fact_is_found(engine: Engine, fill: Fill, model: Any) -> None:
     fill(engine)
     table = table_of(model)
-    for column in table.columns:
-        if column.name == "id":
-            continue
-        name = column.name
-        with engine.connect() as conn:
-            row_id, entry_no, before = conn.exec_driver_sql(
-                f'SELECT id, entry_no, "{name}" FROM {table.name} ORDER BY id'
-            ).first() or (0, 0, None)
-        _unguarded(engine, f'UPDATE {table.name} SET "{name}" = {_other(column)} WHERE id = {row_id}')
-        assert ("altered", entry_no, table.name, row_id) in _named(engine), name
-        assert len(_named(engine)) == 1, name
-        with engine.connect() as conn:
-            mark = "%s" if engine.dialect.name == "postgresql" else "?"
-            statement = f'UPDATE {table.name} SET "{name}" = {mark} WHERE id = {row_id}'
-            if engine.dialect.name == "postgresql":
-                conn.exec_driver_sql("SET session_replication_role = replica")
-            conn.exec_driver_sql(statement, (before,))
-            conn.commit()
-        assert _named(engine) == [], name
+    first = f"FROM {table.name} ORDER BY id"
+    with _stripped(engine) as conn:  # nothing is committed
+        if engine.dialect.name == "postgresql":
+            for check in inspect(conn).get_check_constraints(table.name):
+                conn.exec_driver_sql(f"ALTER TABLE {table.name} DROP CONSTRAINT {check['name']}")
+        row_id, entry_no = conn.exec_driver_sql(f"SELECT id, entry_no {first}").first() or (0, 0)
+        for column in table.columns:
+            if column.name == "id":
+                continue
+            kept = conn.begin_nested()
+            conn.exec_driver_sql(
+                f'UPDATE {table.name} SET "{column.name}" = {_other(column)} WHERE id = {row_id}'
+            )
+            found = [(each.what, each.entry, each.table, each.row) for each in journal.verify(conn)]
+            assert found == [("altered", entry_no, table.name, row_id)], column.name
+            kept.rollback()
+            assert journal.verify(conn) == [], column.name
 
 
 @pytest.mark.parametrize("column", table_of(Journal).columns, ids=lambda column: str(column.name))
@@ -181,8 +174,8 @@ def test_rows_that_swapped_all_but_key_and_mark_are_found(engine: Engine, fill: 
     a, b = ids["reading"], ids["reading 3"]
     fields = ("location_id", "thickness_mm", "written")
     with engine.connect() as conn:
-        rows = dict.fromkeys((a, b), ())
-        for key in rows:
+        rows: dict[int, tuple[Any, ...]] = {}
+        for key in (a, b):
             statement = f"SELECT {', '.join(fields)} FROM reading WHERE id = {key}"
             rows[key] = tuple(conn.exec_driver_sql(statement).one())
     for key, other in ((a, b), (b, a)):
