@@ -468,6 +468,11 @@ class Display:
         ----------
         quantity : str
             The quantity [text].
+
+        Returns
+        -------
+        str
+            The spelling, as printed [text].
         """
         return self.spellings[quantity]
 

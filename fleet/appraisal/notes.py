@@ -102,7 +102,7 @@ class NoteBook:
         out: list[tuple[int, bool, Notice]] = []
         for block, row in self._by_vessel.get(vessel, []):
             location = row if block.level == "location" else -1
-            if (location, block.code) in said and location >= 0:
+            if (location, block.code) in said and block.level != "part":
                 continue
             out.append((location, block.quiet, notice(block.code, self._where(block, row), block.found(row))))
         out.extend((location, False, entry) for location, entry in recorded)

@@ -86,6 +86,11 @@ class Block:
         ----------
         name : str
             The column [text].
+
+        Returns
+        -------
+        int
+            The column, counted from 1 [count].
         """
         heading = self.layout.headings.get(name)
         return heading.index + 1 if heading is not None else 0
@@ -99,6 +104,11 @@ class Block:
             The row, counted from 0 [count].
         name : str
             The column; without one, or where the file lacks it, the row is named [text].
+
+        Returns
+        -------
+        str
+            The place, as in messages [text].
         """
         number = self.column_no(name)
         row_no = self.row_nos[row]
@@ -149,6 +159,11 @@ class Block:
         ----------
         name : str
             The column [text].
+
+        Returns
+        -------
+        list of str
+            One text a row [text].
         """
         return self.texts.get(name) or [""] * len(self)
 
@@ -159,6 +174,11 @@ class Block:
         ----------
         name : str
             The column [text].
+
+        Returns
+        -------
+        list
+            One date or None a row [date].
         """
         return self.dates.get(name) or [None] * len(self)
 
@@ -169,6 +189,11 @@ class Block:
         ----------
         name : str
             The column [text].
+
+        Returns
+        -------
+        ndarray
+            One number a row, in the unit kept [-].
         """
         found = self.numbers.get(name)
         return found if found is not None else np.full(len(self), np.nan)
@@ -182,6 +207,11 @@ class Block:
             The column [text].
         row : int
             The row, counted from 0 [count].
+
+        Returns
+        -------
+        bool
+            Whether it could not be read [-].
         """
         heading = self.layout.headings.get(name)
         if heading is None:  # it may be the column whose heading could not be understood
@@ -197,6 +227,11 @@ class Block:
             The column [text].
         row : int
             The row, counted from 0 [count].
+
+        Returns
+        -------
+        str
+            The value as written [text].
         """
         heading = self.layout.headings.get(name)
         if heading is None or heading.unit is None or math.isnan(self.numbers[name][row]):
@@ -204,11 +239,23 @@ class Block:
         return f"{show(self.raw[name][row])} {heading.unit.spelling}"
 
     def faults(self) -> list[Notice]:
-        """Give every fault, in the order of the sheet."""
+        """Give every fault, in the order of the sheet.
+
+        Returns
+        -------
+        list of Notice
+            The faults [-].
+        """
         return _in_order(self.table_faults, self.row_faults)
 
     def doubts(self) -> list[Notice]:
-        """Give every doubt, in the order of the sheet."""
+        """Give every doubt, in the order of the sheet.
+
+        Returns
+        -------
+        list of Notice
+            The doubts [-].
+        """
         return _in_order(self.table_doubts, self.row_doubts)
 
     def typed_rows(self, which: Sequence[int]) -> list[Row]:
@@ -218,6 +265,11 @@ class Block:
         ----------
         which : sequence of int
             The rows, counted from 0 [count].
+
+        Returns
+        -------
+        list of Row
+            The rows, in the order asked for [-].
         """
         columns = [heading.column for heading in self.layout.headings.values() if heading.readable]
         fields = [column.field for column in columns if column.field not in self.added]
@@ -275,6 +327,11 @@ class Block:
         ----------
         row : int
             The row, counted from 0 [count].
+
+        Returns
+        -------
+        ParkedRow
+            Its content and its faults [-].
         """
         content = {
             heading.text: show(self.raw[name][row])

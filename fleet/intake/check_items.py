@@ -14,6 +14,7 @@ from fleet.intake.block import Block
 from fleet.intake.doubt_numbers import note_against_nominal
 from fleet.intake.known import KnownRegister, Recordings
 from fleet.intake.sheets import show
+from fleet.units import INTERNAL
 
 _PAST_DATES: dict[str, tuple[str, ...]] = {
     "vessels": ("in_service_on", "current_mawp_from", "last_internal_on", "last_external_on"),
@@ -237,8 +238,12 @@ class Checks:
                     value = (block.date if column.kind == "date" else block.text)(column.name)[row]
                     given = bool(value)
                 if given and agree and not any(_agrees(value, one) for one in agree):
-                    listed = ", ".join(_say(one) for one in agree)
-                    found = f"{column.name} '{show(block.raw[column.name][row])}'; on record: {listed}"
+                    unit = f" {INTERNAL[column.quantity]}" if column.quantity is not None else ""
+                    listed = ", ".join(_say(one) + unit for one in agree)
+                    said = (
+                        block.written(column.name, row) if unit else f"'{show(block.raw[column.name][row])}'"
+                    )
+                    found = f"{column.name} {said}; on record: {listed}"
                     remedy = f"record the change with '{_COMMAND_FOR[column.field]}', or leave the cell blank"
                     block.fault("differs from the record", row, column.name, found, remedy)
 

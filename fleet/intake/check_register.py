@@ -39,6 +39,11 @@ class Load:
         ----------
         key : tuple of str
             Vessel, or vessel and part [text].
+
+        Returns
+        -------
+        bool
+            Whether it is [-].
         """
         if len(key) == 1:
             return key[0] in self.known.vessels
@@ -51,6 +56,11 @@ class Load:
         ----------
         key : tuple of str
             Vessel, or vessel and part [text].
+
+        Returns
+        -------
+        list
+            File, block and row of each [count].
         """
         return self.rows.get("vessels" if len(key) == 1 else "parts", {}).get(key, [])
 

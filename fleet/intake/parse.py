@@ -13,7 +13,7 @@ from fleet.intake.block import Block, Floats
 from fleet.intake.headings import Heading, Layout
 from fleet.intake.sheets import Cell, Sheet, clean, is_blank, show
 from fleet.intake.tables import Column
-from fleet.units import Unit, parse_number, to_internal
+from fleet.units import INTERNAL, Unit, parse_number, to_internal
 
 _ISO_DATE = re.compile(r"\d{4}-\d{2}-\d{2}", re.ASCII)
 _DECIMAL_COMMA = re.compile(r"[+-]?\d+,\d+")
@@ -223,8 +223,7 @@ def _out_of_range(block: Block, row: int, column: Column, unit: Unit | None, num
         remedy = None if column.name == "thickness" else "leave the cell blank where it is not known"
         block.fault("negative or zero thickness", row, column.name, f"{said} under '{column.name}'", remedy)
         return
-    kept = {"length": "mm", "pressure": "MPa", "temperature": "°C", "rate": "mm/year", "angle": "degrees"}
-    in_unit = f" {kept[column.quantity]}" if column.quantity is not None else ""
+    in_unit = f" {INTERNAL[column.quantity]}" if column.quantity is not None else ""
     found = (
         f"{said} under '{column.name}', which must be {column.bounds.text() or 'a finite number'}{in_unit}"
     )

@@ -60,7 +60,13 @@ class Bounds(NamedTuple):
     high_open: bool = False
 
     def text(self) -> str:
-        """Say the range in words."""
+        """Say the range in words.
+
+        Returns
+        -------
+        str
+            The range; empty where there is no end [text].
+        """
         parts = []
         if self.low is not None:
             parts.append(f"{'above' if self.low_open else 'at least'} {self.low:g}")
@@ -207,7 +213,8 @@ _PARTS = (
     *_choice("shape", SHAPES, required=True),
     *_length("inside_diameter", "outside_diameter"),
     *_length("length", bounds=NOT_NEGATIVE),
-    *_length("crown_radius", "knuckle_radius", shapes=("torispherical head",)),
+    *_length("crown_radius", shapes=("torispherical head", "hemispherical head")),
+    *_length("knuckle_radius", shapes=("torispherical head",)),
     *_number("half_apex_angle", quantity="angle", bounds=ACUTE, shapes=("cone",)),
     *_number("axis_ratio", bounds=POSITIVE, shapes=("ellipsoidal head",)),
     *_number("cover_factor", bounds=POSITIVE, shapes=("flat cover",)),

@@ -41,7 +41,13 @@ class FileTaken:
     loaded_as: str = ""
 
     def is_sound(self) -> bool:
-        """Whether nothing but single rows is faulty."""
+        """Whether nothing but single rows is faulty.
+
+        Returns
+        -------
+        bool
+            Whether the file as a whole is without fault [-].
+        """
         return not self.faults and not any(block.table_faults for block in self.blocks)
 
     def about(self, *, refused: bool) -> FileIn:
@@ -51,6 +57,11 @@ class FileTaken:
         ----------
         refused : bool
             Whether it is refused [-].
+
+        Returns
+        -------
+        FileIn
+            What became of it [-].
         """
         return FileIn(self.name, self.sha256, refused, bool(self.loaded_as))
 

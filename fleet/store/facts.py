@@ -161,3 +161,36 @@ def _latest(read: dict[str, list[Any]], keep: list[bool], as_of: dt.date | None)
             chosen[entity] = index
     kept_indexes = set(chosen.values())
     return [index in kept_indexes for index in range(len(keep))]
+
+
+def successors(conn: Connection, model: type[Base], *, known: int) -> dict[int, int]:
+    """Tell for every replaced row of a table which row stands for it now.
+
+    A fact names another by its key, and that other one may have been corrected since.
+
+    Parameters
+    ----------
+    conn : sqlalchemy.Connection
+        An open connection [-].
+    model : type
+        The model of the table [-].
+    known : int
+        Number of the last entry that counts [count].
+
+    Returns
+    -------
+    dict of int to int
+        Key of the replaced row to the key of the last row of its line; rows never replaced are not in it.
+    """
+    table = table_of(model)
+    statement = select(table.c.replaces_id, table.c.id).where(
+        table.c.replaces_id.is_not(None), table.c.entry_no <= known
+    )
+    following = {before: after for lot in raw_rows(conn, statement) for before, after in lot}
+    last: dict[int, int] = {}
+    for before in sorted(
+        following, reverse=True
+    ):  # a row replaces an earlier one: the later ones are known first
+        after = following[before]
+        last[before] = last.get(after, after)
+    return last

@@ -67,6 +67,21 @@ class Reader:
             self._read[model] = facts.columns(self.conn, model, known=self.known, as_of=self.as_of)
         return self._read[model]
 
+    def successors(self, model: type[models.Base]) -> dict[int, int]:
+        """Tell for every replaced row of a table which row stands for it at this moment.
+
+        Parameters
+        ----------
+        model : type
+            The table [-].
+
+        Returns
+        -------
+        dict of int to int
+            Key of the replaced row to the key of the last of its line.
+        """
+        return facts.successors(self.conn, model, known=self.known)
+
     def head(self) -> str:
         """Give the hash of the last journal entry that may be read.
 

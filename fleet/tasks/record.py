@@ -176,6 +176,8 @@ def fetch_readings(record: Reader, tree: Tree, in_force: levels.Levels) -> tuple
     surveys = record.rows(models.Survey)
     name = dict(zip(surveys["id"], surveys["name"], strict=True))
     error = dict(zip(surveys["id"], surveys["reading_error_mm"], strict=True))
+    for before, now in record.successors(models.Survey).items():
+        name[before], error[before] = name.get(now), error.get(now)
     table = Readings.of(
         len(rows),
         **same(columns, Readings),
@@ -222,9 +224,13 @@ def fetch_restarts(record: Reader, tree: Tree) -> Restarts:
     for row, part in enumerate(tree.location_part):
         of_part.setdefault(tree.parts["entity_id"][part], []).append(row)
     by_restart: dict[int, set[int]] = {restart: set() for restart in columns["id"]}
+    own = set(named["restart_id"])
+    now = record.successors(models.Restart)
     for restart, entity in zip(named["restart_id"], named["location_id"], strict=True):
-        if restart in by_restart and entity in tree.location:
-            by_restart[restart].add(tree.location[entity])
+        # A corrected restart that names no locations of its own keeps those of the one it replaces.
+        stands = restart if restart in by_restart or now.get(restart) in own else now.get(restart)
+        if stands in by_restart and entity in tree.location:
+            by_restart[stands].add(tree.location[entity])
     rows: list[tuple[int, int]] = []
     for row, restart in enumerate(columns["id"]):
         whole = of_part.get(columns["part_id"][row], []) if columns["whole_part"][row] else []

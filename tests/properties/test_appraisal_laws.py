@@ -8,7 +8,6 @@ measured span (rule 3 leaves it behind).
 from __future__ import annotations
 
 import copy
-import random
 import time
 from collections.abc import Callable
 from dataclasses import replace
@@ -28,7 +27,7 @@ from fleet.words import NO_VERDICT, STANDINGS
 
 AS_OF = date(2026, 1, 1)
 CARRY_TO = date(2028, 7, 1)
-moderate = settings(max_examples=60, deadline=None, suppress_health_check=[HealthCheck.too_slow])
+moderate = settings(max_examples=25, deadline=None, suppress_health_check=[HealthCheck.too_slow])
 
 SHAPES: tuple[dict[str, Any], ...] = (
     {"shape": "cylinder"},
@@ -89,8 +88,9 @@ def no_better(worse: float | None, than: float | None) -> bool:
     return worse is None or (than is not None and worse <= than * (1 + 1e-9) + 1e-9)
 
 
-def assert_no_better(worse: VesselView, than: VesselView) -> None:
-    assert rank(worse) <= rank(than) or worse.standing == NO_VERDICT
+def assert_no_better(worse: VesselView, than: VesselView, *, or_absent: bool = False) -> None:
+    # worse or absent: where a verdict rested on what is now missing, the worst that is still known stands
+    assert rank(worse) <= (max(rank(than), STANDINGS.index(NO_VERDICT)) if or_absent else rank(than))
     for one, other in zip(places(worse), places(than), strict=True):
         assert no_better(one.mawp_today_mpa, other.mawp_today_mpa)
         assert no_better(one.projected_mawp_mpa, other.projected_mawp_mpa)
@@ -167,14 +167,18 @@ def test_querying_the_last_reading_never_improves(fleet: Fleet, data: st.DataObj
     def query(other: Fleet) -> None:
         last_of(other, place)["status"] = "queried"
 
-    assert_no_better(changed(fleet, query), than=look(fleet))
+    assert_no_better(changed(fleet, query), than=look(fleet), or_absent=True)
 
 
 @moderate
 @given(fleet=fleets(), data=st.data())
-def test_a_queried_reading_lower_than_expected_governs_as_if_accepted(fleet: Fleet, data: st.DataObject) -> None:
+def test_a_queried_reading_lower_than_expected_governs_as_if_accepted(
+    fleet: Fleet, data: st.DataObject
+) -> None:
     place = data.draw(st.integers(0, len(fleet.locations) - 1))
-    rows = sorted((row for row in fleet.readings if row["location"] == place), key=lambda row: float(row["taken_day"]))
+    rows = sorted(
+        (row for row in fleet.readings if row["location"] == place), key=lambda row: float(row["taken_day"])
+    )
     walls = [row["thickness_mm"] for row in rows]
     chosen = data.draw(st.integers(0, len(rows) - 1))
     if walls[chosen] > min([14.0, *walls[:chosen]]):
@@ -202,13 +206,15 @@ def test_a_failed_reading_never_improves(fleet: Fleet, result: str, days: int, d
         day = date.fromordinal(int(last_of(other, place)["taken_day"]) + days).isoformat()
         other.read(place, (day, None), result=result)
 
-    assert_no_better(changed(fleet, fail), than=look(fleet))
+    assert_no_better(changed(fleet, fail), than=look(fleet), or_absent=True)
 
 
 @moderate
 @given(
     fleet=fleets(),
-    column=st.sampled_from(["allowable_stress_mpa", "static_head_mpa", "inside_diameter_mm", "nominal_thickness_mm"]),
+    column=st.sampled_from(
+        ["allowable_stress_mpa", "static_head_mpa", "inside_diameter_mm", "nominal_thickness_mm"]
+    ),
     data=st.data(),
 )
 def test_a_blank_datum_never_improves(fleet: Fleet, column: str, data: st.DataObject) -> None:
@@ -217,7 +223,7 @@ def test_a_blank_datum_never_improves(fleet: Fleet, column: str, data: st.DataOb
     def blank(other: Fleet) -> None:
         other.parts[part][column] = None
 
-    assert_no_better(changed(fleet, blank), than=look(fleet))
+    assert_no_better(changed(fleet, blank), than=look(fleet), or_absent=True)
 
 
 @moderate
@@ -225,7 +231,11 @@ def test_a_blank_datum_never_improves(fleet: Fleet, column: str, data: st.DataOb
 def test_what_was_never_told_or_measured_never_improves(fleet: Fleet, name: str) -> None:
     def doubt(other: Fleet) -> None:
         if name == "lined":
-            other.parts[0] |= {"lining": "integral clad", "lining_counts_in_strength": "no", "lining_thickness_mm": 3.0}
+            other.parts[0] |= {
+                "lining": "integral clad",
+                "lining_counts_in_strength": "no",
+                "lining_thickness_mm": 3.0,
+            }
         elif name == "vacuum":
             other.vessels[0]["external_design_pressure_mpa"] = 0.1
         elif name == "unread part":
@@ -255,16 +265,16 @@ def plain(view: VesselView) -> dict[str, Any]:
 
 def shuffled(fleet: Fleet, seed: int) -> Fleet:
     """Put parts, locations and readings in another order."""
-    mixed = random.Random(seed)
+    mixed = np.random.default_rng(seed)
     other = copy.deepcopy(fleet)
-    for children, parents, key in ((other.locations, other.parts, "part"), (other.readings, other.locations, "location")):
-        order = list(range(len(parents)))
-        mixed.shuffle(order)
+    family = ((other.locations, other.parts, "part"), (other.readings, other.locations, "location"))
+    for children, parents, key in family:
+        order = mixed.permutation(len(parents)).tolist()
         parents[:] = [parents[old] for old in order]
         for row in children:
             row[key] = order.index(row[key])
-    mixed.shuffle(other.readings)
-    mixed.shuffle(other.inspections)
+    for rows in (other.readings, other.inspections):
+        rows[:] = [rows[old] for old in mixed.permutation(len(rows)).tolist()]
     return other
 
 
@@ -274,7 +284,7 @@ def test_the_order_of_rows_does_not_matter(fleet: Fleet, seed: int) -> None:
     assert plain(shuffled(fleet, seed).view(AS_OF)) == plain(fleet.view(AS_OF))
 
 
-@moderate
+@settings(moderate, max_examples=8)
 @given(first=fleets(), second=fleets())
 def test_the_order_of_vessels_does_not_matter(first: Fleet, second: Fleet) -> None:
     def joined(one: Fleet, other: Fleet) -> Fleet:
@@ -318,7 +328,8 @@ def big(vessels: int, places: int = 10, surveys: int = 4) -> Inputs:
         parts=repeat(table.parts, vessels, vessel=np.arange(vessels)),
         locations=repeat(table.locations, n, part=np.repeat(np.arange(vessels), places)),
         readings=repeat(
-            table.readings, m, location=np.tile(np.arange(n), surveys), taken_day=ordinal("2010-01-01") + 1400.0 * survey,
+            table.readings, m, location=np.tile(np.arange(n), surveys),
+            taken_day=ordinal("2010-01-01") + 1400.0 * survey,
             thickness_mm=13.0 - np.tile(loss, surveys) * survey * 1400 / 365.25,
         ),
         inspections=repeat(table.inspections, vessels, vessel=np.arange(vessels)),
@@ -336,6 +347,6 @@ def seconds(inputs: Inputs) -> float:
 
 @pytest.mark.slow
 def test_twenty_times_more_locations_cost_less_than_thirty_times_more() -> None:
-    few, many = big(200), big(4000)
-    assert len(many.locations) == 20 * len(few.locations) == 40_000
+    few, many = big(100), big(2000)
+    assert len(many.locations) == 20 * len(few.locations) == 20_000
     assert seconds(many) < 30 * seconds(few)

@@ -302,17 +302,14 @@ class Page:
         Cell
         """
         cell: Cell = self.sheet.cell(row, column)
-        cell.style = style
         if isinstance(value, Figure):
-            if value.value is None:
-                value = NONE
-            else:
-                cell.style = ink.number_style(value.decimals)
-                value = value.value
+            style = style if value.value is None else ink.number_style(value.decimals)
+            value = NONE if value.value is None else value.value
         elif isinstance(value, date):
-            cell.style = "date"
+            style = "date"
         elif isinstance(value, int):
-            cell.style = ink.number_style(0)
+            style = ink.number_style(0)
+        cell.style = style
         if isinstance(value, str):
             _write_text(cell, value)
         else:

@@ -45,7 +45,9 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
         for part in view.parts:
             for place in part.locations or (None,):
                 drawn += 1
-                page.line(_row(view, part, place, figures), standing=place.standing if place else view.standing)
+                page.line(
+                    _row(view, part, place, figures), standing=place.standing if place else view.standing
+                )
     if not drawn:
         page.none()
     turns = tuple(f"{head} [{figures.unit(kind)}]" for head, kind in TURNS)

@@ -5,7 +5,7 @@ from __future__ import annotations
 from datetime import date
 
 import pytest
-from handsums import FIRST, LAST, add_steady, days_after, steady
+from handsums import FIRST, LAST, days_after, steady
 from invented import Fleet, codes, location_of, ordinal
 
 from fleet.appraisal.views import Place

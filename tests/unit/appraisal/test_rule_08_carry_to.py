@@ -106,7 +106,9 @@ def test_rule_8_7_the_figure_at_the_end_of_the_list_has_no_standing() -> None:
 
 def test_rule_8_8_missing_next_survey_on_is_a_gap() -> None:
     assert "no planned survey" in codes(steady(12.0, 0.25).view().gaps)
-    assert "no planned survey" not in codes(steady(12.0, 0.25, next_survey_day=ordinal("2027-01-01")).view().gaps)
+    assert "no planned survey" not in codes(
+        steady(12.0, 0.25, next_survey_day=ordinal("2027-01-01")).view().gaps
+    )
 
 
 @pytest.mark.parametrize("as_of", ["2026-01-01", "2028-06-01"])
@@ -115,7 +117,9 @@ def test_rule_8_9_carry_to_asks_about_another_date_overdue_or_not(as_of: str) ->
     view = fleet.view(as_of, carry_to=date(2030, 1, 1))
     assert (view.carry_to_on, view.carry_to_basis) == (date(2030, 1, 1), "date asked for")
     # 2192 days at twice 0.25
-    assert view.parts[0].locations[0].projected_thickness_mm == pytest.approx(12 - 0.5 * 2192 / 365.25, rel=1e-12)
+    assert view.parts[0].locations[0].projected_thickness_mm == pytest.approx(
+        12 - 0.5 * 2192 / 365.25, rel=1e-12
+    )
 
 
 def test_rule_8_9_the_date_asked_for_moves_no_due_date() -> None:

@@ -19,7 +19,9 @@ WALL_2028 = 12.0 - 2 * 0.25 * 4.0  # 10 mm, twice the loss
 def roomy(wall: float = 12.0, **part: object) -> Fleet:
     """Give a vessel with no structural minimum, plated for 9 MPa and used at 1."""
     fleet = Fleet()
-    fleet.vessel(inspected=LAST, nameplate_mawp_mpa=9.0, current_mawp_mpa=1.0, next_survey_day=ordinal("2028-01-01"))
+    fleet.vessel(
+        inspected=LAST, nameplate_mawp_mpa=9.0, current_mawp_mpa=1.0, next_survey_day=ordinal("2028-01-01")
+    )
     add_steady(fleet, 0, "shell", wall, 0.25, **part)
     return fleet
 
@@ -61,7 +63,9 @@ def test_rule_9_3_the_weaker_direction_decides() -> None:
 def test_rule_9_3_the_geometry_is_corroded() -> None:
     # sphere: P = 2·S·E·t / (Ro - 0.8·t); outside loss: P = 2·S·E·t / (R + 0.2·t)
     assert shell(shape="sphere").projected_mawp_mpa == pytest.approx(2000 / 506, rel=1e-12)
-    assert shell(shape="sphere", loss_side="outside").projected_mawp_mpa == pytest.approx(2000 / 502, rel=1e-12)
+    assert shell(shape="sphere", loss_side="outside").projected_mawp_mpa == pytest.approx(
+        2000 / 502, rel=1e-12
+    )
 
 
 def test_rule_9_3_a_cone_has_grown() -> None:

@@ -15,7 +15,8 @@ from fleet.appraisal.views import Place
 def pair(**vessel: Any) -> Fleet:
     """Give a sound vessel: shell and head, each with locations L1 and L2 read in 2016 and 2024."""
     fleet = Fleet()
-    fleet.vessel(**({"inspected": LAST, "next_survey_day": ordinal("2027-06-01")} | vessel))
+    row: dict[str, Any] = {"inspected": LAST, "next_survey_day": ordinal("2027-06-01")}
+    fleet.vessel(**(row | vessel))
     for name in ("shell", "head"):
         part = add_steady(fleet, 0, name, 13.0, 0.1)
         fleet.read(fleet.location(part, "L2"), (FIRST, 13.8), (LAST, 13.0))
@@ -27,7 +28,9 @@ SHELL_1, SHELL_2, HEAD_1, HEAD_2 = range(4)
 
 def test_rule_10_1_pressure_and_life_governed_by_different_locations() -> None:
     fleet = Fleet()
-    fleet.vessel(inspected=LAST, nameplate_mawp_mpa=9.0, current_mawp_mpa=1.0, next_survey_day=ordinal("2025-01-01"))
+    fleet.vessel(
+        inspected=LAST, nameplate_mawp_mpa=9.0, current_mawp_mpa=1.0, next_survey_day=ordinal("2025-01-01")
+    )
     # thick wall with a structural minimum near, and fast: life (13 - 10) / 0.5 = 6 years
     add_steady(fleet, 0, "skirted", 13.0, 0.5, structural_minimum_mm=10.0)
     # thin wall, slow: carries less pressure, lives (8 - 5.12) / 0.05 = 57 years
@@ -110,7 +113,9 @@ def test_rule_10_4_a_part_without_a_needed_datum_gives_no_verdict() -> None:
 
 def test_rule_10_4_a_part_without_any_rate_gives_no_verdict() -> None:
     fleet = pair()
-    boot = fleet.part(0, "boot", inside_diameter_mm=None, outside_diameter_mm=1028.0, nominal_thickness_mm=None)
+    boot = fleet.part(
+        0, "boot", inside_diameter_mm=None, outside_diameter_mm=1028.0, nominal_thickness_mm=None
+    )
     fleet.read(fleet.location(boot), (LAST, 13.0))
     view = fleet.view()
     assert location_of(view, "boot").planning_rate_mm_per_year is None
@@ -137,7 +142,9 @@ def test_rule_10_5_no_echo_answered_by_a_thickness_is_over() -> None:
 
 @pytest.mark.parametrize("result", ["no access", "lamination"])
 @pytest.mark.parametrize("again", ["2025-06-02", "2025-06-11"])
-def test_rule_10_5_no_echo_is_not_answered_by_another_failure_of_the_same_visit(result: str, again: str) -> None:
+def test_rule_10_5_no_echo_is_not_answered_by_another_failure_of_the_same_visit(
+    result: str, again: str
+) -> None:
     fleet = pair()
     fleet.read(SHELL_1, ("2025-06-01", None), result="no echo")
     fleet.read(SHELL_1, (again, None), result=result)
@@ -174,7 +181,9 @@ def test_rule_10_7_another_skipped_location_carries_its_earlier_wall_on_with_a_g
     view = fleet.view()
     assert view.standing == "rating held"
     assert location_of(view, "shell", "L1").wall_used_mm == 13.0
-    assert [gap.where for gap in view.gaps if gap.code == "location not read at last visit"] == ["V-1 / shell / L1"]
+    assert [gap.where for gap in view.gaps if gap.code == "location not read at last visit"] == [
+        "V-1 / shell / L1"
+    ]
 
 
 def test_rule_10_7_a_location_left_out_without_a_word_is_a_gap_too() -> None:
@@ -182,7 +191,9 @@ def test_rule_10_7_a_location_left_out_without_a_word_is_a_gap_too() -> None:
     fleet.read(SHELL_2, ("2025-06-01", 12.9))
     view = fleet.view()
     assert view.standing == "rating held"
-    assert [gap.where for gap in view.gaps if gap.code == "location not read at last visit"] == ["V-1 / shell / L1"]
+    assert [gap.where for gap in view.gaps if gap.code == "location not read at last visit"] == [
+        "V-1 / shell / L1"
+    ]
 
 
 @pytest.mark.parametrize(
@@ -195,7 +206,9 @@ def test_rule_10_7_a_location_left_out_without_a_word_is_a_gap_too() -> None:
         (13.0, 0.1, "no verdict"),
     ],
 )
-def test_rule_10_8_what_is_known_to_be_rating_short_or_worse_stands(wall: float, rate: float, standing: str) -> None:
+def test_rule_10_8_what_is_known_to_be_rating_short_or_worse_stands(
+    wall: float, rate: float, standing: str
+) -> None:
     fleet = steady(wall, rate, next_survey_day=ordinal("2027-06-01"))
     fleet.part(0, "never measured")
     assert fleet.view().standing == standing

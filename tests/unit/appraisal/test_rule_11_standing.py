@@ -26,7 +26,9 @@ from fleet.appraisal.inputs import (
     Vessels,
 )
 
-PLANNED = {"next_survey_day": ordinal("2027-01-01")}  # three years and a day after the last reading
+PLANNED: dict[str, Any] = {
+    "next_survey_day": ordinal("2027-01-01")
+}  # three years and a day after the last reading
 
 
 @pytest.mark.parametrize(
@@ -114,7 +116,9 @@ def test_rule_11_4_running_out_within_ten_years() -> None:
     # as-of 2026-01-01 plus 10 years = 3652 days is 2035-12-31, 4382 days after the last reading: life 11.997 years
     assert days_after("2026-01-01", 3652) == days_after(LAST, 731 + 3652)
     assert steady(10.0 + 0.25 * 4383 / 365.25, 0.25, inspected="2026-01-01").view().standing == "running out"
-    assert steady(10.0 + 0.25 * 4384.5 / 365.25, 0.25, inspected="2026-01-01").view().standing == "rating held"
+    assert (
+        steady(10.0 + 0.25 * 4384.5 / 365.25, 0.25, inspected="2026-01-01").view().standing == "rating held"
+    )
 
 
 def test_rule_11_4_running_out_within_twice_the_internal_interval() -> None:
@@ -131,7 +135,9 @@ def test_rule_11_5_flag_overdue() -> None:
 
 
 def test_rule_11_5_flag_survey_within_the_year() -> None:
-    assert steady(14.0, 0.25, next_survey_day=ordinal("2026-09-01")).view().flags == ("survey within the year",)
+    assert steady(14.0, 0.25, next_survey_day=ordinal("2026-09-01")).view().flags == (
+        "survey within the year",
+    )
 
 
 def doubtful_rate() -> Fleet:
@@ -154,7 +160,9 @@ def test_rule_11_5_flag_re_gauge() -> None:
     assert (view.standing, view.flags, view.block) == ("rating short", ("re-gauge",), "re-gauge")
 
 
-@pytest.mark.parametrize(("state", "flag"), [("idle", "idle"), ("idle protected", "idle"), ("out of service",) * 2])
+@pytest.mark.parametrize(
+    ("state", "flag"), [("idle", "idle"), ("idle protected", "idle"), ("out of service",) * 2]
+)
 def test_rule_11_5_flag_idle_and_out_of_service(state: str, flag: str) -> None:
     view = steady(14.0, 0.25, state=state).view()
     assert flag in view.flags
@@ -167,7 +175,11 @@ def test_rule_11_5_an_idle_vessel_may_be_overdue() -> None:
 
 def test_rule_11_6_a_carry_to_date_that_is_the_half_life_date_reads_held_by_half_life() -> None:
     view = steady(14.0, 0.25, inspected="2025-01-01").view()  # half of 16 years: 2032-01-01
-    assert (view.carry_to_on, view.standing, view.held_by_half_life) == (date(2032, 1, 1), "rating held", True)
+    assert (view.carry_to_on, view.standing, view.held_by_half_life) == (
+        date(2032, 1, 1),
+        "rating held",
+        True,
+    )
     planned = steady(14.0, 0.25, inspected="2025-01-01", next_survey_day=ordinal("2030-01-01")).view()
     assert not planned.held_by_half_life
     by_cap = steady(20.0, 0.25, inspected="2025-01-01").view()
@@ -204,7 +216,8 @@ def test_rule_11_7_else_the_standing_is_the_block() -> None:
 
 
 def test_rule_11_7_blocks_in_order_and_each_vessel_in_exactly_one() -> None:
-    assert words.BLOCKS == (*words.STANDINGS, "re-gauge", "idle", "out of service", "retired")
+    after_the_standings = ("re-gauge", "idle", "out of service", "retired")
+    assert (*words.STANDINGS, *after_the_standings) == words.BLOCKS
     fleet = Fleet()
     cases = [(9.9, ""), (10.2, ""), (14.0, ""), (14.0, "idle"), (14.0, "retired"), (14.0, "out of service")]
     for number, (wall, state) in enumerate(cases):
@@ -262,7 +275,9 @@ def many(count: int, seed: int) -> Inputs:
             error_mm=np.full(2 * count, 0.01), reading_id=np.arange(2 * count),
         ),
         restarts=Restarts.of(0), idle_times=IdleTimes.of(0),
-        inspections=Inspections.of(count, vessel=rows, kind=["internal"] * count, done_day=last, extent=["full"] * count),
+        inspections=Inspections.of(
+            count, vessel=rows, kind=["internal"] * count, done_day=last, extent=["full"] * count
+        ),
         decisions=Decisions.of(0), relief=Relief.of(0), settings=Settings(),
     )  # fmt: skip
 
@@ -280,8 +295,12 @@ def test_rule_11_3_one_day_after_half_life_nearly_all_of_them_would_be_short() -
     # the tie is a tie: rounded up, or with a coarse tolerance, it would not hold
     inputs = many(300, seed=7)
     days = appraise(inputs, as_of=date(2026, 1, 1)).judged.half_life_day
-    later = [appraise(inputs, as_of=date(2026, 1, 1), carry_to=date.fromordinal(int(day) + 1)) for day in days[:20]]
-    short = [words.STANDINGS[each.judged.vessel_standing[i]] == "rating short" for i, each in enumerate(later)]
+    later = [
+        appraise(inputs, as_of=date(2026, 1, 1), carry_to=date.fromordinal(int(day) + 1)) for day in days[:20]
+    ]
+    short = [
+        words.STANDINGS[each.judged.vessel_standing[i]] == "rating short" for i, each in enumerate(later)
+    ]
     assert all(short)
 
 

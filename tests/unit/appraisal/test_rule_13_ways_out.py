@@ -12,7 +12,7 @@ from fleet.appraisal.views import WaysOut
 
 
 def short(**vessel: object) -> Fleet:
-    """Give a vessel that is short: a wall of 7.1195 mm, 2 above what 1 MPa needs, 0.5 mm/year, carried to 2027-01-01."""
+    """Give a vessel that is short on 2027-01-01: 7.1195 mm, 2 above what 1 MPa needs, at 0.5 mm/year."""
     given = {"next_survey_day": ordinal("2027-01-01")} | vessel
     return steady(outside_hoop(1.0) + 2.0, 0.5, required=0.0, **given)
 
@@ -40,14 +40,18 @@ def test_rule_13_1_the_rating_does_not_hold_where_a_given_limit_lies_below_it() 
 
 def test_rule_13_2_the_pressure_that_reaches_the_carry_to_date() -> None:
     wall = outside_hoop(1.0) + 2.0 - 2 * 0.5 * 1096 / 365.25
-    assert ways(short(), "2024-06-01").pressure_that_reaches_mpa == pytest.approx(outside_hoop(0.0, wall), rel=1e-9)
+    assert ways(short(), "2024-06-01").pressure_that_reaches_mpa == pytest.approx(
+        outside_hoop(0.0, wall), rel=1e-9
+    )
 
 
 def test_rule_13_2_it_is_the_least_of_all_parts() -> None:
     fleet = short()
     add_steady(fleet, 0, "head", outside_hoop(1.0) + 1.9, 0.5)
     wall = outside_hoop(1.0) + 1.9 - 2 * 0.5 * 1096 / 365.25
-    assert ways(fleet, "2024-06-01").pressure_that_reaches_mpa == pytest.approx(outside_hoop(0.0, wall), rel=1e-9)
+    assert ways(fleet, "2024-06-01").pressure_that_reaches_mpa == pytest.approx(
+        outside_hoop(0.0, wall), rel=1e-9
+    )
 
 
 def test_rule_13_3_none_where_the_structural_minimum_governs() -> None:

@@ -6,6 +6,7 @@ From one 1 January of 2000, 2004, 2008, … to the next lie 1461 days, 4 years e
 from __future__ import annotations
 
 from datetime import date, timedelta
+from typing import Any
 
 import numpy as np
 import pytest
@@ -99,7 +100,11 @@ def test_rule_14_4_idle_without_protection_counts_as_service() -> None:
     day = date(2014, 1, 1), date(2018, 1, 1)
     tree = Tree({}, {}, {}, {7: 0}, {}, {}, np.array([]), np.array([]))
     for state, spans in (("idle protected", 1), ("idle", 0), ("out of service", 0)):
-        states = {"subject_id": [7, 7], "from_on": list(day), "state": [state, "in service"]}
+        states: dict[str, list[Any]] = {
+            "subject_id": [7, 7],
+            "from_on": list(day),
+            "state": [state, "in service"],
+        }
         assert len(idle_times(tree, states)) == spans
     assert location_of(one_cylinder(*LINE, state="idle").view()).long_term_rate_mm_per_year == pytest.approx(
         0.1

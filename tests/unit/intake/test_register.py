@@ -301,3 +301,18 @@ def test_installed_sets_are_listed(register: Load) -> None:
         "did you mean 'api510'? installed: api510",
         "did you mean 'asme8-1'? installed: asme8-1, membrane",
     ]
+
+
+def test_year_built_is_a_whole_year_not_after_this_one(register: Load) -> None:
+    head = "vessel,rules,design_code,in_service_on,nameplate_mawp [MPa],year_built\n"
+    rows = [
+        f"V-{n},api510,membrane,2012-03-01,1.7,{year}" for n, year in enumerate(("2026", "2011.5", "2011"), 1)
+    ]
+    intake = register({"v.csv": head + "\n".join(rows)}, park=True)
+    assert fault_list(intake) == [
+        ("number out of range", "v.csv, cell F2"),
+        ("number out of range", "v.csv, cell F3"),
+    ]
+    (row,) = intake.rows("vessels")
+    assert row.values["year_built"] == 2011
+    assert isinstance(row.values["year_built"], int)

@@ -210,6 +210,35 @@ def test_thin_readings_are_told_whatever_happens_to_the_file(survey: Load) -> No
     assert intake.thin[2]["alert_thickness_mm"] is None
 
 
+def test_a_thin_reading_at_an_unknown_location_is_held_against_its_part(
+    tmp_path: Path, known: KnownRegister, history: History
+) -> None:
+    part = dataclasses.replace(
+        known.parts["D-101", "shell"], alert_thickness_mm=8.0, required_thickness_mm=7.0
+    )
+    known = dataclasses.replace(known, parts={**known.parts, ("D-101", "shell"): part})
+    path = tmp_path / "s.csv"
+    path.write_text(
+        HEADER + "D-101,shell,99,2024-06-01,7.6\nD-999,shell,1,2024-06-01,1.0\n", encoding="utf-8"
+    )
+    intake = read_survey(path, known=known, history=history, today=TODAY)
+    assert codes(intake) == ["unknown location", "unknown vessel"]
+    assert [(thin["location"], thin["which"]) for thin in intake.thin] == [("99", "alert")]
+
+
+def test_thin_readings_of_a_file_loaded_before_are_told_again(
+    tmp_path: Path, known: KnownRegister, history: History
+) -> None:
+    path = tmp_path / "s.csv"
+    path.write_text(HEADER + "D-101,shell,1,2024-06-01,7.6,read,7.4\n", encoding="utf-8")
+    first = read_survey(path, known=known, history=history, today=TODAY)
+    again = dataclasses.replace(known, files={first.sha256: "the survey of June"})
+    second = read_survey(path, known=again, history=history, today=TODAY)
+    assert (first.thin[0]["wall_mm"], first.thin[0]["which"]) == (7.4, "alert and required")
+    assert first.thin == second.thin
+    assert doubts(second) == ["already loaded"]
+
+
 def test_a_low_reading_is_never_a_fault(survey: Load) -> None:
     intake = survey(HEADER + "D-101,shell,2,2024-06-01,3.0\n")
     assert (intake.faults, len(intake.thin), len(intake.rows("readings"))) == ((), 1, 1)

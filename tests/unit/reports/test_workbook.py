@@ -228,14 +228,19 @@ def test_the_stair_divides_the_years_that_hold_from_those_that_do_not(appraisal:
         if says is None:
             break
         cells = [sheet.cell(row, 5 + year) for year in range(years + 1)]
-        heavy = [number for number, cell in enumerate(cells) if cell.border.left.style == "thick"]
+        heavy = [
+            number
+            for number, cell in enumerate(cells)
+            if cell.border.left is not None and cell.border.left.style == "thick"
+        ]
         if says in {"no figure", "no verdict"}:
             assert heavy == []
             continue
         first = years if says == "holds" else next(k for k in range(years) if int(says[:4]) == 2026 + k)
         assert heavy == [first]
         assert all(cell.value >= current for cell in cells[:first])
-        assert all(cell.value < current for cell in cells[first:years])
+        if "by its wall" not in says:
+            assert all(cell.value < current for cell in cells[first:years])
 
 
 def test_the_stair_never_steps_back(appraisal: AppraisalLike) -> None:

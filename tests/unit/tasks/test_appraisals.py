@@ -108,7 +108,7 @@ def test_the_journal_tells_who_wrote_about_a_vessel(surveyed: Engine, survey: Su
     assert [one["no"] for one in journal_entries(surveyed, "V-101")] == [1, 2, 3, 4]
     assert "B. Stern  survey load" in journal_text(journal_entries(surveyed, "V-102"))
     with pytest.raises(UnknownTag, match="did you mean V-101"):
-        journal_entries(surveyed, "V-10l")
+        journal_entries(surveyed, "V 101")
 
 
 def test_a_whole_journal_is_whole_and_a_changed_one_is_not(tmp_path: Path) -> None:

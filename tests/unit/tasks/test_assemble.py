@@ -129,7 +129,7 @@ def test_a_state_of_the_register_without_a_day_is_marked(load: Load, engine: Eng
 
 
 def test_the_nearest_setting_wins(works: Engine) -> None:
-    places: list[tuple[dict[str, str], float]] = [
+    places: list[tuple[dict[str, Any], float]] = [
         ({}, 0.01),
         ({"vessel": "V-101"}, 0.02),
         ({"vessel": "V-101", "part": "shell"}, 0.03),
@@ -190,6 +190,39 @@ def test_a_restart_of_the_whole_part_takes_in_locations_laid_out_later(works: En
     early, late = date(2020, 1, 1).toordinal(), date(2022, 1, 1).toordinal()
     assert named == [("2", early), ("1", late), ("2", late), ("3", late)]
     assert len(inputs(works, date(2021, 1, 1)).restarts) == 1
+
+
+def test_a_corrected_restart_keeps_its_locations_unless_it_names_others(works: Engine, rows: Rows) -> None:
+    about: dict[str, Any] = {
+        "vessel": "V-101",
+        "part": "shell",
+        "kind": "new metal",
+        "what": "replaced",
+        **WHO,
+    }
+    add_restart(works, happened_on=date(2020, 1, 1), locations=["1"], **about)
+    (first,) = rows(models.Restart)
+    others = {name: value for name, value in first.items() if name not in {"id", "entry_no", "mark"}}
+
+    def corrected(replaces: int, day: date) -> int:
+        with journal.writer(works, task="restart correct", by="A. Keel") as entry:
+            (number,) = entry.add(models.Restart, [{**others, "happened_on": day, "replaces_id": replaces}])
+        return number
+
+    def named() -> list[tuple[str, float]]:
+        made = inputs(works)
+        return [
+            (made.locations.location[row], day)
+            for row, day in zip(made.restarts.location, made.restarts.happened_day, strict=True)
+        ]
+
+    second = corrected(first["id"], date(2021, 1, 1))
+    third = corrected(second, date(2022, 1, 1))
+    assert named() == [("1", date(2022, 1, 1).toordinal())]
+    south = next(row["id"] for row in rows(models.Entity) if row["tag"] == "2")
+    with journal.writer(works, task="restart correct", by="A. Keel") as entry:
+        entry.add(models.RestartLocation, [{"restart_id": third, "location_id": south}])
+    assert named() == [("2", date(2022, 1, 1).toordinal())]
 
 
 def test_inspections_decisions_and_doubts_of_the_future_do_not_count(works: Engine, survey: Survey) -> None:

@@ -141,7 +141,7 @@ def test_a_decision_keeps_what_was_written(works: Engine, rows: Rows) -> None:
     ],
 )
 def test_a_setting_that_cannot_be_is_refused(
-    works: Engine, key: str, value: float, place: dict[str, str], found: str
+    works: Engine, key: str, value: float, place: dict[str, Any], found: str
 ) -> None:
     with pytest.raises(Refused, match=found):
         set_setting(works, key=key, value=value, from_on=DAY, by="A. Keel", **place)
