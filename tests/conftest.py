@@ -4,9 +4,13 @@ from __future__ import annotations
 
 import datetime as dt
 import os
+import resource
 import shutil
+import subprocess
+import sys
 import uuid
 from collections.abc import Callable, Iterator
+from dataclasses import dataclass
 from pathlib import Path
 
 import pytest
@@ -90,6 +94,42 @@ def address(request: pytest.FixtureRequest, tmp_path: Path) -> Iterator[str]:
 def engine(address: str) -> Engine:
     """Give an engine on a database with the newest schema and no facts."""
     return make_engine(address)
+
+
+@dataclass(frozen=True)
+class DemoRun:
+    """What `fleet demo FOLDER` said, and the time of one processor that it took."""
+
+    folder: Path
+    stdout: str
+    stderr: str
+    cpu_seconds: float
+
+
+@pytest.fixture(scope="session")
+def fleet_command() -> str:
+    """Give the installed command, the one that stands beside the running Python."""
+    found = Path(sys.executable).with_name("fleet")
+    assert found.exists(), "fleet is not installed beside this Python"
+    return str(found)
+
+
+@pytest.fixture(scope="session")
+def demo_run(tmp_path_factory: pytest.TempPathFactory, fleet_command: str) -> DemoRun:
+    """Build the demo once for all tests; they may read its folder and must not write to it."""
+    folder = tmp_path_factory.mktemp("works") / "brackwater"
+    before = resource.getrusage(resource.RUSAGE_CHILDREN)
+    done = subprocess.run([fleet_command, "demo", folder], capture_output=True, text=True, check=False)
+    after = resource.getrusage(resource.RUSAGE_CHILDREN)
+    assert done.returncode == 0, done.stderr
+    used = after.ru_utime + after.ru_stime - before.ru_utime - before.ru_stime
+    return DemoRun(folder, done.stdout, done.stderr, used)
+
+
+@pytest.fixture(scope="session")
+def brackwater(demo_run: DemoRun) -> Path:
+    """Give the folder of the demo."""
+    return demo_run.folder
 
 
 @pytest.fixture

@@ -70,9 +70,6 @@ def run(arguments: Sequence[str] | None = None) -> None:
         app(args=words, prog_name="fleet")
     except FleetError as problem:
         _end(problem)
-    except BrokenPipeError:
-        sys.stdout = open(os.devnull, "w", encoding="utf-8")  # noqa: SIM115, PTH123  # the reader left: nothing more to say
-        raise SystemExit(0) from None
     except Exception as problem:  # the last net: whatever else happens is told in three parts
         if os.environ.get("FLEET_DEBUG"):
             raise

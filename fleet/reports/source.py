@@ -55,10 +55,25 @@ class AppraisalLike(Protocol):
         """The last day of the life of the list."""
 
     def views(self) -> tuple[VesselView, ...]:
-        """Give every vessel, in the order of the register."""
+        """Give every vessel, in the order of the register.
+
+        Returns
+        -------
+        tuple of VesselView
+        """
 
     def timetable(self, years: int = 10) -> TimetableLike:
-        """Give the pressures carried over the coming years."""
+        """Give the pressures carried over the coming years.
+
+        Parameters
+        ----------
+        years : int
+            How many years [count].
+
+        Returns
+        -------
+        TimetableLike
+        """
 
 
 class RuleValueLike(Protocol):
@@ -104,11 +119,26 @@ class Snapshot:
         self._appraisal = appraisal
 
     def views(self) -> tuple[VesselView, ...]:
-        """Give every vessel, in the order of the register."""
+        """Give every vessel, in the order of the register.
+
+        Returns
+        -------
+        tuple of VesselView
+        """
         return self._views
 
     def timetable(self, years: int = 10) -> TimetableLike:
-        """Give the pressures carried over the coming years."""
+        """Give the pressures carried over the coming years.
+
+        Parameters
+        ----------
+        years : int
+            How many years [count].
+
+        Returns
+        -------
+        TimetableLike
+        """
         return self._appraisal.timetable(years)
 
 

@@ -272,7 +272,8 @@ def _say(problem: BaseException, where: str) -> NoReturn:
         raise Refused(
             where, f"a rule of the database forbids it ({words})", "correct the values; nothing was recorded"
         ) from problem
-    if kind == "OperationalError" and (not state or state.startswith(("08", "28", "3D", "57"))):
+    server = hasattr(problem, "sqlstate")  # SQLite's errors have none
+    if server and kind == "OperationalError" and (not state or state.startswith(("08", "28", "3D", "57"))):
         raise DatabaseProblem(
             where, f"it does not answer ({words})", "check the address and that the server runs"
         ) from problem

@@ -119,7 +119,7 @@ def _book(appraisal: AppraisalLike, figures: Figures, stamp: Stamp, grounds: Gro
     book.remove(book.worksheets[0])
     ink.lay_out_styles(book)
     the_year.draw(book, appraisal, figures, stamp)
-    the_list.draw(book, appraisal, figures, stamp)
+    the_list.draw(book, appraisal, figures, stamp, grounds)
     timetable.draw(book, appraisal, figures, stamp)
     shortlists.draw_running_out(book, appraisal, figures, stamp)
     shortlists.draw_re_gauge(book, appraisal, figures, stamp)

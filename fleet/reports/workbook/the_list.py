@@ -10,7 +10,7 @@ from fleet.appraisal.views import LocationView, PartView, Place, VesselView
 from fleet.reports import cite
 from fleet.reports.figures import NONE, Figures
 from fleet.reports.reason import why
-from fleet.reports.source import AppraisalLike, located, reconciled
+from fleet.reports.source import AppraisalLike, Grounds, located, reconciled
 from fleet.reports.story import measured_words, operating_sentence, plateau_sentence, relief_sentences
 from fleet.reports.workbook.page import Column, Page, Stamp, Value
 
@@ -26,7 +26,7 @@ PLACE_LINE = 18
 WHY, IN_WORDS, CLAUSE = "Why", "Relief and operation in words", "Required by clause"
 
 
-def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stamp) -> None:
+def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stamp, grounds: Grounds) -> None:
     """Draw the sheet.
 
     Parameters
@@ -39,7 +39,10 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
         How figures are printed [-].
     stamp : Stamp
         What stands on every printed page [-].
+    grounds : Grounds
+        Rules in use, whose status stands beside the dates [-].
     """
+    status = rules_status(grounds)
     page = Page(book, "The list", stamp)
     page.title(
         f"The list, {appraisal.as_of.isoformat()}",
@@ -51,7 +54,7 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
     for block, members in reconciled(appraisal).items():
         page.block(f"{block}: {len(members)}" if members else f"{block}: none", aside=1)
         for view in members:
-            page.line(row(view, figures), standing=view.standing)
+            page.line(row(view, figures, status), standing=view.standing)
     turns = (f"{OPERATING} pressure [{figures.unit('pressure')}]", WALL)
     page.finish(breaks_before=turns, elastic=(WHY, IN_WORDS, CLAUSE))
 
@@ -98,6 +101,7 @@ def columns(figures: Figures) -> list[Column]:
         Column("External due", 11),
         Column("Governs due", 18),
         Column("Interval [years]", number=True),
+        Column("By the rules", 12),
         Column("Interval in words", 20),
         Column(WALL, 18, group="The wall at the place that governs life"),
         Column(f"Last wall {length}", number=True),
@@ -119,7 +123,25 @@ def columns(figures: Figures) -> list[Column]:
     ]
 
 
-def row(view: VesselView, figures: Figures) -> list[Value]:
+def rules_status(grounds: Grounds) -> str:
+    """Say how well the rules in use are known, where that is less than confirmed.
+
+    Parameters
+    ----------
+    grounds : Grounds
+        The rules in use [-].
+
+    Returns
+    -------
+    str
+        In brackets, to stand behind the name of a rule set; empty where all is confirmed.
+    """
+    known = {value.status for values in (grounds.rules or {}).values() for value in values}
+    unsure = sorted(known - {"confirmed", "ours"})
+    return f" ({', '.join(unsure)})" if unsure else ""
+
+
+def row(view: VesselView, figures: Figures, status: str = "") -> list[Value]:
     """Give the cells of one vessel.
 
     Parameters
@@ -128,6 +150,8 @@ def row(view: VesselView, figures: Figures) -> list[Value]:
         The vessel [-].
     figures : Figures
         How figures are printed [-].
+    status : str
+        How well the rules in use are known, as `rules_status` says it [text].
 
     Returns
     -------
@@ -140,7 +164,7 @@ def row(view: VesselView, figures: Figures) -> list[Value]:
         *_pressures(view, figures),
         *_relief(view, figures),
         *_ways_out(view, figures),
-        *_dates(view, figures),
+        *_dates(view, figures, status),
         *_wall(view, part, place, figures),
         *_rests_on(view, place, figures),
     ]
@@ -206,7 +230,7 @@ def _wall(
     )
 
 
-def _dates(view: VesselView, figures: Figures) -> Sequence[Value]:
+def _dates(view: VesselView, figures: Figures, status: str) -> Sequence[Value]:
     return (
         figures.years(view.life_left_years),
         view.retirement_on or NONE,
@@ -214,6 +238,7 @@ def _dates(view: VesselView, figures: Figures) -> Sequence[Value]:
         view.external_due_on or NONE,
         _governs_due(view),
         figures.years(view.internal_interval_years),
+        f"{view.rules}{status}",
         plateau_sentence(view, figures),
     )
 

@@ -67,6 +67,16 @@ def test_rule_2_2_readings_on_either_side_of_a_restart_are_never_one_observation
     assert (place.observations, place.wall_used_mm) == (1, 14.3)
 
 
+@pytest.mark.parametrize(("wall", "observations"), [(13.6, 1), (14.5, 0)])
+def test_rule_2_2_queried_readings_of_new_metal_are_not_judged_by_the_metal_that_is_gone(
+    wall: float, observations: int
+) -> None:
+    # expected is nominal, 14, not the 12.0 of the old course
+    fleet = restarted("new metal", "2016-01-01", *OLD)
+    fleet.read(0, ("2020-01-01", wall), status="queried")
+    assert location_of(fleet.view()).observations == observations
+
+
 def test_rule_2_3_new_metal_without_a_baseline_starts_from_nominal_marked_so() -> None:
     # 14 mm in 2016, 13.8 in 2020, 13.2 in 2024: 0.1 mm/year from nominal, 0.15 over the last span
     view = restarted("new metal", "2016-01-01", *OLD, ("2020-01-01", 13.8), ("2024-01-01", 13.4)).view()

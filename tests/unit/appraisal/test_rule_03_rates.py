@@ -99,6 +99,14 @@ def test_rule_3_4_two_different_errors_add_as_squares() -> None:
     assert found == pytest.approx(1.645 * 0.5 / 8, rel=1e-12)
 
 
+def test_rule_3_4_a_history_from_nominal_can_show_only_what_its_readings_span() -> None:
+    # new metal in 2016, read in 2020 and 2024: two readings, 4 years apart
+    fleet = one_cylinder(("2020-01-01", 13.2), ("2024-01-01", 13.0))
+    fleet.restart(0, "new metal", "2016-01-01")
+    found = location_of(fleet.view()).least_measurable_rate_mm_per_year
+    assert found == pytest.approx(1.645 * math.sqrt(2) * 0.25 / 4, rel=1e-12)
+
+
 def test_rule_3_5_chosen_rate_effective() -> None:
     assert rate_of(chosen(0.3).view()) == (0.3, "chosen")
 
@@ -308,11 +316,16 @@ def test_rule_3_19_a_mean_within_its_error_is_no_shared_shift() -> None:
 
 
 def test_rule_3_19_a_shift_of_the_few_is_not_shared() -> None:
-    fleet = shell(8.34, 7.86, 6.9, locations=3)
+    # s = 0.05 mm: the mean of three rising by 0.15 and four falling by 0.056 is 0.032, above three errors of 0.006
+    fleet = shell(8.34, 7.86, 6.9, locations=3, error=0.05)
     for number in range(4):
         place = fleet.location(name=f"S{number}")
-        fleet.read(place, ("2008-01-01", 8.3), ("2020-01-01", 7.1), ("2024-01-01", 7.0))
+        fleet.read(place, ("2008-01-01", 8.3), ("2020-01-01", 7.1), ("2024-01-01", 7.0), error_mm=0.05)
     assert "shared shift" not in codes(fleet.view().doubts)
+
+
+def test_rule_3_19_one_location_shares_its_shift_with_none() -> None:
+    assert "shared shift" not in codes(shell(8.34, 7.86, 6.9, error=0.05).view().doubts)
 
 
 def test_rule_3_19_withdrawn_locations_have_no_say() -> None:

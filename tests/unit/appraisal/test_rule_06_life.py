@@ -70,3 +70,9 @@ def test_rule_6_1_no_life_is_infinite() -> None:
     fleet.locations[0]["rate_floor_mm_per_year"] = 0.0
     place = location_of(fleet.view("2024-01-01"))
     assert (place.remaining_life_years, place.retirement_on) == (None, None)
+
+
+def test_rule_6_1_life_left_is_counted_from_the_as_of_date_and_never_negative() -> None:
+    fleet = steady(12.0, 0.25)  # retires 2032-01-01
+    assert fleet.view("2028-01-01").life_left_years == pytest.approx(4.0, rel=1e-12)
+    assert fleet.view("2033-01-01").life_left_years == 0.0

@@ -212,3 +212,22 @@ def test_rule_7_9_a_deferral_ends_with_the_inspection_it_put_off() -> None:
 
 def test_rule_7_9_a_deferral_to_an_earlier_date_moves_nothing() -> None:
     assert deferred("2027-08-01").view("2027-07-01").internal_due_on == date(2028, 1, 1)
+
+
+def test_rule_7_1_a_blank_datum_never_puts_the_due_date_off() -> None:
+    # required is 10 mm at least by the structural minimum, so the life is 8 years at most, whatever the stress
+    fleet = steady(12.0, 0.25)
+    known = fleet.view("2028-06-01")
+    fleet.parts[0]["allowable_stress_mpa"] = None
+    blank = fleet.view("2028-06-01")
+    assert known.internal_due_on == date(2028, 1, 1)
+    assert blank.internal_due_on is None or blank.internal_due_on <= date(2028, 1, 1)
+    assert "overdue" in known.flags
+    assert "overdue" in blank.flags
+
+
+def test_rule_7_9_a_deferral_before_the_last_inspection_does_not_use_up_the_next() -> None:
+    fleet = deferred("2028-02-01")
+    fleet.inspect(0, "internal", "2028-01-15")  # due again 2038-01-14, 3652 days later
+    fleet.decide(0, "deferral", "2037-06-01", until_day=ordinal("2038-03-01"))
+    assert fleet.view("2037-07-01").internal_due_on == date(2038, 3, 1)

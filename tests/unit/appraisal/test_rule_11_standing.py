@@ -169,8 +169,9 @@ def test_rule_11_5_flag_idle_and_out_of_service(state: str, flag: str) -> None:
     assert view.standing == "rating held"
 
 
-def test_rule_11_5_an_idle_vessel_may_be_overdue() -> None:
-    assert steady(12.0, 0.25, state="idle").view("2028-06-01").flags[:2] == ("overdue", "idle")
+@pytest.mark.parametrize("state", ["idle", "out of service"])
+def test_rule_11_5_a_vessel_at_rest_may_be_overdue(state: str) -> None:
+    assert steady(12.0, 0.25, state=state).view("2028-06-01").flags == ("overdue", state)
 
 
 def test_rule_11_6_a_carry_to_date_that_is_the_half_life_date_reads_held_by_half_life() -> None:

@@ -100,16 +100,31 @@ def test_rule_12_2_a_setting_the_vessel_may_never_carry_is_due_at_once() -> None
     assert vessel(9.5).relief[0].reset_by_on == date(2026, 1, 1)
 
 
-def test_rule_12_2_a_given_thickness_carries_no_more_than_the_current_mawp() -> None:
-    # shape other at its given thickness carries the current 1.0 MPa, no more; below it, nothing is known
+def other_shape() -> Fleet:
+    """Give a shell with room to spare and a box whose given thickness of 10 mm lasts to 2028-01-01 at twice the loss.
+
+    At its given thickness the box carries the current 1.0 MPa and no more; below it, nothing is known of it.
+    """
     fleet = Fleet()
     fleet.vessel(inspected=LAST, nameplate_mawp_mpa=9.0, current_mawp_mpa=1.0)
+    add_steady(fleet, 0, "shell", 12.0, 0.025)
     add_steady(fleet, 0, "box", 12.0, 0.25, shape="other", required_thickness_given_mm=10.0)
-    fleet.relieve(0, 1.2, "PSV-1")
-    fleet.relieve(0, 0.9, "PSV-2")
-    above, below = fleet.view().relief
-    assert above.reset_by_on == date(2026, 1, 1)
-    assert below.reset_by_on == date(2028, 1, 1)  # (12 - 10) / 0.5 = 4 years
+    return fleet
+
+
+def test_rule_12_2_a_setting_above_what_a_given_thickness_carries_is_due_at_once() -> None:
+    fleet = other_shape()
+    fleet.relieve(0, 1.2)
+    view = fleet.view()
+    assert view.mawp_today_mpa == 1.0
+    assert view.relief[0].now == ABOVE
+    assert view.relief[0].reset_by_on == date(2026, 1, 1)
+
+
+def test_rule_12_2_a_setting_is_known_to_be_carried_only_while_the_given_thickness_lasts() -> None:
+    fleet = other_shape()
+    fleet.relieve(0, 0.9)
+    assert fleet.view().relief[0].reset_by_on == date(2028, 1, 1)
 
 
 def test_rule_12_3_operating_pressure_likewise() -> None:

@@ -104,3 +104,11 @@ def test_rule_13_5_no_pressure_reaches_where_a_part_was_never_measured() -> None
     fleet = steady(14.0, 0.25, required=0.0)
     fleet.part(0, "never measured")
     assert ways(fleet).pressure_that_reaches_mpa is None
+
+
+def test_rule_13_5_no_pressure_reaches_where_a_given_thickness_is_used_up() -> None:
+    # the box of shape other is below its given thickness on the carry-to date: what it carries then is not known
+    fleet = steady(14.0, 0.025, required=0.0, next_survey_day=ordinal("2027-01-01"))
+    add_steady(fleet, 0, "box", 11.0, 0.25, shape="other", required_thickness_given_mm=10.0)
+    assert fleet.view().standing == "rating short"
+    assert ways(fleet).pressure_that_reaches_mpa is None

@@ -16,7 +16,7 @@ from commands import Ended
 from small_works import SURVEYS, write, write_register
 
 from fleet import __version__, errors
-from fleet.cli import main, options, output
+from fleet.cli import main, options
 from fleet.tasks import appraisals
 from fleet.words import CAUTION
 
@@ -121,15 +121,15 @@ def test_a_traceback_is_shown_only_to_who_asks(
         main.run(["show", "V-1"])
 
 
-def test_a_reader_that_leaves_early_is_no_error(
-    fleet: Run, empty: Path, monkeypatch: pytest.MonkeyPatch
-) -> None:
-    def leave(_: str) -> None:
-        raise BrokenPipeError
-
-    monkeypatch.setattr(output, "say", leave)
-    monkeypatch.setattr(sys, "stdout", sys.stdout)
-    assert fleet("gaps").code == 0
+def test_a_reader_that_leaves_early_hears_nothing_more() -> None:
+    code = "import sys, fleet.cli.main as m; m.run(['rules', 'show', 'api510'])"
+    with subprocess.Popen(
+        [sys.executable, "-c", code], stdout=subprocess.PIPE, stderr=subprocess.PIPE, text=True
+    ) as running:
+        assert running.stdout is not None
+        assert running.stderr is not None
+        running.stdout.close()
+        assert running.stderr.read() == ""
 
 
 @pytest.mark.parametrize(
@@ -222,7 +222,8 @@ def test_a_refused_register_prints_its_faults_in_the_document(
     ended = fleet("register", "load", bad, "--json")
     assert ended.code == 1
     document = json.loads(ended.out)
-    assert (document["loaded"], [fault["code"] for fault in document["faults"]]) == (0, ["missing column"])
+    assert document["loaded"] == 0
+    assert document["faults"][0]["code"] == "missing column"
     assert "missing column" in ended.err
 
 

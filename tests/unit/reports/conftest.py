@@ -303,6 +303,6 @@ def make_appraisal() -> Callable[..., InventedAppraisal]:
     return InventedAppraisal
 
 
-@pytest.fixture
+@pytest.fixture(scope="session")
 def appraisal() -> InventedAppraisal:
     return works()

@@ -48,6 +48,12 @@ def _read(appraisal: AppraisalLike, **options: Any) -> Any:
     return openpyxl.load_workbook(BytesIO(workbook_bytes(appraisal, **options)))
 
 
+@pytest.fixture(scope="module")
+def book(appraisal: AppraisalLike) -> Any:
+    """The workbook of the invented fleet, drawn once and only read."""
+    return _read(appraisal)
+
+
 def _cells(book: Any) -> Iterator[Any]:
     for sheet in book.worksheets:
         for row in sheet.iter_rows():
@@ -69,12 +75,14 @@ def _rows(sheet: Any) -> list[dict[str, Any]]:
     ]
 
 
-def test_the_sheets_bear_the_names_of_the_contract(appraisal: AppraisalLike) -> None:
-    assert _read(appraisal).sheetnames == SHEETS
+def test_the_sheets_bear_the_names_of_the_contract(book: Any) -> None:
+    assert book.sheetnames == SHEETS
 
 
-def test_every_vessel_is_on_the_list_exactly_once_beneath_its_block(appraisal: AppraisalLike) -> None:
-    sheet = _read(appraisal)["The list"]
+def test_every_vessel_is_on_the_list_exactly_once_beneath_its_block(
+    appraisal: AppraisalLike, book: Any
+) -> None:
+    sheet = book["The list"]
     block, found = "", []
     for line in sheet.iter_rows(min_row=_head_row(sheet) + 1):
         tag, beside = line[1].value, line[2].value
@@ -86,15 +94,15 @@ def test_every_vessel_is_on_the_list_exactly_once_beneath_its_block(appraisal: A
     assert sorted(found) == sorted((view.vessel, view.block) for view in appraisal.views())
 
 
-def test_empty_blocks_are_named(appraisal: AppraisalLike) -> None:
-    sheet = _read(appraisal)["The list"]
+def test_empty_blocks_are_named(book: Any) -> None:
+    sheet = book["The list"]
     heads = [line[2].value for line in sheet.iter_rows(min_row=_head_row(sheet) + 1) if line[1].value is None]
     assert [head.partition(":")[0] for head in heads] == list(words.BLOCKS)
     assert "out of service: none" in heads
 
 
-def test_the_year_adds_up(appraisal: AppraisalLike) -> None:
-    sheet = _read(appraisal)["The year"]
+def test_the_year_adds_up(appraisal: AppraisalLike, book: Any) -> None:
+    sheet = book["The year"]
     counts = {row[1].value: row[2].value for row in sheet.iter_rows() if isinstance(row[2].value, int)}
     assert counts.pop("all blocks together") == appraisal.count
     assert tuple(counts) == words.BLOCKS
@@ -120,8 +128,8 @@ def test_figures_are_numbers_rounded_once_to_the_safe_side(appraisal: AppraisalL
     assert listed["C-201"]["Retirement"].date() == date(2045, 3, 2)
 
 
-def test_number_formats_keep_the_decimals_of_the_unit(appraisal: AppraisalLike) -> None:
-    sheet = _read(appraisal)["The list"]
+def test_number_formats_keep_the_decimals_of_the_unit(book: Any) -> None:
+    sheet = book["The list"]
     head = _head_row(sheet)
     column = next(cell.column for cell in sheet[head] if cell.value == "Projected MAWP [MPa]")
     formats = {
@@ -132,13 +140,19 @@ def test_number_formats_keep_the_decimals_of_the_unit(appraisal: AppraisalLike) 
     assert formats == {"0.000_)"}
 
 
-def test_held_by_half_life_stands_instead_of_a_margin(appraisal: AppraisalLike) -> None:
-    listed = {row["Vessel"]: row for row in _rows(_read(appraisal)["The list"])}
+def test_held_by_half_life_stands_instead_of_a_margin(book: Any) -> None:
+    listed = {row["Vessel"]: row for row in _rows(book["The list"])}
     assert listed["G-012"]["Margin then [MPa]"] == words.HELD_BY_HALF_LIFE
     assert listed["E-310"]["Margin then [MPa]"] == -0.177
     assert listed["G-012"]["At list's end [MPa]"] == 1.58
     assert listed["E-310"]["At list's end [MPa]"] is None
     assert listed["F-007"]["Parts measured"] == "measured parts only: 1 of 2"
+
+
+def test_margins_are_against_what_the_wall_carries_today(book: Any) -> None:
+    row = next(row for row in _rows(book["The list"]) if row["Vessel"] == "D-101")
+    assert row["Margin today, operating [MPa]"] == -0.038
+    assert row["Margin today, relief [MPa]"] == -0.088
 
 
 def test_text_of_others_never_starts_a_formula(
@@ -180,28 +194,25 @@ def test_characters_that_a_workbook_cannot_hold_are_shown_as_such(
     assert _rows(sheet)[0]["Service"] == "a�b"
 
 
-def test_the_same_record_gives_the_same_bytes(appraisal: AppraisalLike) -> None:
+def test_the_same_record_gives_the_same_bytes(appraisal: AppraisalLike, book: Any) -> None:
     assert workbook_bytes(appraisal) == workbook_bytes(appraisal)
-    book = _read(appraisal)
     assert book.properties.created.date() == date(2026, 12, 1)
     assert book.properties.modified.date() == date(2026, 12, 1)
 
 
-def test_one_ochre_bar_per_relief_sentence_and_no_other_fill(appraisal: AppraisalLike) -> None:
-    book = _read(appraisal)
+def test_one_ochre_bar_per_relief_sentence_and_no_other_fill(book: Any) -> None:
     filled = [cell for cell in _cells(book) if cell.fill.fill_type is not None]
     assert [(cell.parent.title, cell.fill.start_color.rgb) for cell in filled] == [("The year", OCHRE)]
     beside = book["The year"].cell(filled[0].row, 2).value
     assert words.RELIEF_ABOVE_NOW in beside
 
 
-def test_every_font_is_of_the_one_ink(appraisal: AppraisalLike) -> None:
-    inks = {cell.font.color.rgb for cell in _cells(_read(appraisal)) if cell.value is not None}
+def test_every_font_is_of_the_one_ink(book: Any) -> None:
+    inks = {cell.font.color.rgb for cell in _cells(book) if cell.value is not None}
     assert inks == {"FF16213A"}
 
 
-def test_every_page_is_ready_to_print(appraisal: AppraisalLike) -> None:
-    book = _read(appraisal)
+def test_every_page_is_ready_to_print(appraisal: AppraisalLike, book: Any) -> None:
     for sheet in book.worksheets:
         assert sheet.page_setup.orientation == "landscape"
         assert sheet.page_setup.paperSize == 9
@@ -220,8 +231,8 @@ def test_every_page_is_ready_to_print(appraisal: AppraisalLike) -> None:
         )
 
 
-def test_the_stair_divides_the_years_that_hold_from_those_that_do_not(appraisal: AppraisalLike) -> None:
-    sheet = _read(appraisal)["Timetable"]
+def test_the_stair_divides_the_years_that_hold_from_those_that_do_not(book: Any) -> None:
+    sheet = book["Timetable"]
     head, years = _head_row(sheet), 10
     for row in range(head + 1, sheet.max_row):
         says, current = sheet.cell(row, 3).value, sheet.cell(row, 4).value
@@ -243,16 +254,16 @@ def test_the_stair_divides_the_years_that_hold_from_those_that_do_not(appraisal:
             assert all(cell.value < current for cell in cells[first:years])
 
 
-def test_the_stair_never_steps_back(appraisal: AppraisalLike) -> None:
-    sheet = _read(appraisal)["Timetable"]
+def test_the_stair_never_steps_back(book: Any) -> None:
+    sheet = book["Timetable"]
     said = [row["First year short"] for row in _rows(sheet) if row["Current MAWP [MPa]"] is not None]
     steps = [9999 if word == "holds" else int(word[:4]) for word in said if word[:2] != "no"]
     assert steps == sorted(steps)
     assert [word[:2] for word in said][-2:] == ["no", "no"]
 
 
-def test_beneath_the_timetable_every_vessel_is_named_once_more(appraisal: AppraisalLike) -> None:
-    sheet = _read(appraisal)["Timetable"]
+def test_beneath_the_timetable_every_vessel_is_named_once_more(appraisal: AppraisalLike, book: Any) -> None:
+    sheet = book["Timetable"]
     said = [
         cell.value
         for cell in sheet["B"]
@@ -280,8 +291,8 @@ def test_years_that_fall_together_are_told_apart() -> None:
     assert year_heads([date(2028, 1, 1), date(2028, 12, 31)]) == ["2028-01-01", "2028-12-31"]
 
 
-def test_running_out_is_soonest_first_and_leaves_out_what_holds(appraisal: AppraisalLike) -> None:
-    found = [row["Vessel"] for row in _rows(_read(appraisal)["Running out"])]
+def test_running_out_is_soonest_first_and_leaves_out_what_holds(book: Any) -> None:
+    found = [row["Vessel"] for row in _rows(book["Running out"])]
     assert found == ["D-101", "D-103", "D-102", "G-012"]
 
 
@@ -294,14 +305,14 @@ def test_the_window_of_running_out(make_vessel: Maker) -> None:
     assert not is_running_out(replace(worse, block=words.RETIRED))
 
 
-def test_re_gauge_names_the_points_and_the_day(appraisal: AppraisalLike) -> None:
-    (row,) = _rows(_read(appraisal)["Re-gauge"])
+def test_re_gauge_names_the_points_and_the_day(book: Any) -> None:
+    (row,) = _rows(book["Re-gauge"])
     assert (row["Vessel"], row["Part"], row["Location"]) == ("H-044", "shell course 1", "L-02")
     assert row["Gauge by"].date() == date(2027, 6, 1)
 
 
-def test_a_row_per_location_and_one_for_a_part_without_any(appraisal: AppraisalLike) -> None:
-    found = _rows(_read(appraisal)["What each figure rests on"])
+def test_a_row_per_location_and_one_for_a_part_without_any(appraisal: AppraisalLike, book: Any) -> None:
+    found = _rows(book["What each figure rests on"])
     expected = [
         (view.vessel, part.part, place.location if place else "none laid out")
         for view in appraisal.views()
@@ -312,8 +323,7 @@ def test_a_row_per_location_and_one_for_a_part_without_any(appraisal: AppraisalL
     assert all("Remaining life" not in head for head in found[0])
 
 
-def test_doubts_and_gaps_carry_what_to_do(appraisal: AppraisalLike) -> None:
-    book = _read(appraisal)
+def test_doubts_and_gaps_carry_what_to_do(book: Any) -> None:
     assert [(row["Vessel"], row["Code"], row["To do"]) for row in _rows(book["Gaps"])] == [
         ("F-007", "part never measured", "measure it"),
         ("F-007", "no relief device", "load its relief devices"),
@@ -330,6 +340,7 @@ def test_a_status_short_of_confirmed_stands_beside_figure_and_formula(
     rules = load_rule_set("api510")
     book = _read(made, rules={f"{rules.title}, {rules.edition}": list(rules.values.values())})
     assert "(from memory)" in _rows(book["The list"])[0]["Required by clause"]
+    assert _rows(book["The list"])[0]["By the rules"] == "api510 (secondary)"
     assert "(from memory)" in _rows(book["What each figure rests on"])[0]["Required by clause"]
     read = _rows(book["How to read"])
     formulas = {row["What"]: row["Status"] for row in read if row["What"].startswith("thick_sphere")}
