@@ -84,8 +84,9 @@ def _missing(book: NoteBook, bench: Bench, vacuum: Bools) -> None:
     for column, rows in need.missing.items():
         code = "no given thickness" if column == "required_thickness_given" else "missing datum"
         book.add(code, "part", _by_part(bench, rows) & found.live_part, f"{column} is blank")
+    code_of = inputs.vessels.design_code[inputs.parts.vessel]
     book.add("no formula", "part", _by_part(bench, need.no_formula) & found.live_part,
-             lambda row: f"{inputs.parts.shape[row]} under {inputs.vessels.design_code[inputs.parts.vessel[row]]}")  # fmt: skip
+             lambda row: f"{inputs.parts.shape[row]} under {code_of[row]}")  # fmt: skip
     outside = (need.rated.domain != 0) & ~need.no_formula
     book.add("outside formula limits", "part", _by_part(bench, outside) & found.live_part,
              "the required wall at the current MAWP is outside the limits of every form")  # fmt: skip
@@ -130,7 +131,8 @@ def _readings(book: NoteBook, bench: Bench) -> None:
     limit = np.asarray(noticeable_change(s_1=now.previous_error_mm, s_2=now.last_error_mm))
     gain = (now.gain_mm > limit) & found.live
     book.add("apparent gain", "location", gain, lambda row: (
-        f"{now.gain_mm[row]:.2f} mm thicker on {_day(now.last_day, row)}; {limit[row]:.2f} mm could be error"))  # fmt: skip
+        f"{now.gain_mm[row]:.2f} mm thicker on {_day(now.last_day, row)}; "
+        f"{limit[row]:.2f} mm could be error"))  # fmt: skip
     book.add(
         "queried low reading governs", "location", found.queried_low & found.live, "a queried reading governs"
     )
@@ -162,7 +164,8 @@ def _rates(book: NoteBook, bench: Bench) -> None:
         quiet=True)  # fmt: skip
     shift = found.shift
     book.add("shared shift", "part", shift.shared & found.live_part, lambda row: (
-        f"short-term less long-term rate: mean {shift.mean[row]:.3f}, error {shift.error[row]:.3f} mm/year"))  # fmt: skip
+        f"short-term less long-term rate: mean {shift.mean[row]:.3f}, "
+        f"error {shift.error[row]:.3f} mm/year"))  # fmt: skip
 
 
 def _proportions(book: NoteBook, bench: Bench) -> None:
@@ -170,6 +173,12 @@ def _proportions(book: NoteBook, bench: Bench) -> None:
     for code in sorted({str(text) for text in rated.proportion.tolist() if text}):
         rows = _by_part(bench, np.asarray(rated.proportion == code, dtype=np.bool_))
         book.add(code, "part", rows & bench.found.live_part, "at the required thickness")
+    thick = np.zeros(len(bench.need.part), dtype=np.bool_)
+    for names in (rated.hoop_formula, rated.axial_formula, rated.end_formula):
+        thick |= np.char.startswith(names.astype(np.str_), "thick")
+    unknown = thick & np.isnan(bench.need.geometry.edition_year)
+    book.add("edition unknown", "part", _by_part(bench, unknown) & bench.found.live_part,
+             "code_edition names no year")  # fmt: skip
 
 
 def _vessels(book: NoteBook, bench: Bench, judged: Judged) -> None:

@@ -67,7 +67,18 @@ class Bench:
         return self.found.live & self.need.complete[:n] & ~lining_uncertain(self.found)
 
     def rows(self, wall_mm: Floats) -> Floats:
-        """Stretch walls of locations to rows of locations and parts."""
+        """Stretch walls of locations to rows of locations and parts.
+
+        Parameters
+        ----------
+        wall_mm : ndarray
+            Wall of each location; shape (locations,) [mm].
+
+        Returns
+        -------
+        ndarray
+            The same, then NaN for every part; shape (locations + parts,) [mm].
+        """
         return np.concatenate((wall_mm, np.full(len(self.inputs.parts), np.nan)))
 
 

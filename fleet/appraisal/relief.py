@@ -8,7 +8,7 @@ from fleet.appraisal.due import rule_values
 from fleet.appraisal.groups import least_by
 from fleet.appraisal.inputs import Bools, Floats, Ints
 from fleet.appraisal.judge import Bench, day_when_down_to
-from fleet.mechanics.rating import Geometry, required_wall
+from fleet.mechanics.rating import required_wall
 
 
 def _pairs(vessel: Ints, vessel_of: Ints, use: Bools, vessels: int) -> tuple[Ints, Ints]:

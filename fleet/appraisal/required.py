@@ -61,8 +61,9 @@ class Needs:
         Index into `SETS` of what sets it, -1 where nothing is known [-].
     not_pressure_mm : ndarray
         The largest that is no matter of pressure, 0 where none [mm].
-    rated : Rated
-        The pressure formulas' own result, with limits and formula names [-].
+    rated, rated_pressure : Rated
+        The formulas' own results with limits and formula names: walls at the current MAWP, and pressures at the
+        wall required [-].
     missing : dict of str to ndarray
         Rows that need a register column and lack it [-].
     no_formula, complete : ndarray
@@ -84,6 +85,7 @@ class Needs:
     by: Ints
     not_pressure_mm: Floats
     rated: Rated
+    rated_pressure: Rated
     missing: dict[str, Bools]
     no_formula: Bools
     complete: Bools
@@ -264,6 +266,7 @@ def needs(inputs: Inputs, pressures: Pressures) -> Needs:
         by=by,
         not_pressure_mm=not_pressure,
         rated=rated,
+        rated_pressure=allowable_pressure(shape_of_rows, np.where(given_shape, np.nan, known)),
         missing=missing,
         no_formula=no_formula,
         complete=complete,

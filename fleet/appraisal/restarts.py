@@ -94,7 +94,7 @@ class RestartIndex:
             Shape (locations,) [count].
         """
         total = np.concatenate(([0], np.cumsum(self.metal))).astype(np.int64)
-        return total[self.first + self.number] - total[self.first]
+        return np.asarray(total[self.first + self.number] - total[self.first], dtype=np.int64)
 
     def begin(self, rank: int) -> Beginning:
         """Say how the histories of one rank begin.
@@ -133,10 +133,12 @@ def present_histories(
         The restarts [-].
     starts : Starts
         Nominal wall and its day; shape (locations,) [-].
-    window_days, expected, floor : ndarray
-        Observation window [day], expected rate and floor [mm/year]; shape (locations,).
+    window_days : ndarray
+        Observation window; shape (locations,) [day].
     clock : ServiceClock
         Days that count [-].
+    expected, floor : ndarray
+        Expected rate and the owner's floor; shape (locations,) [mm/year].
     as_of_day : float
         The as-of date [day].
 

@@ -13,6 +13,7 @@ from fleet.appraisal.inputs import Floats
 from fleet.appraisal.judge import HELD
 from fleet.appraisal.required import SETS
 from fleet.appraisal.views import LocationView, PartView, Place, ReliefView, VesselView, WaysOut
+from fleet.rules import rule_status
 from fleet.thinning.clock import DAYS_PER_YEAR
 from fleet.thinning.planning import BASES
 from fleet.words import STANDINGS, Notice
@@ -143,7 +144,11 @@ def part_view(appraisal: Appraisal, part: int, doubts: dict[int, list[Notice]]) 
     own = len(inputs.locations) + part
     governs = max(rows, key=lambda row: float(np.nan_to_num(need.known_mm[row], nan=-1.0))) if rows else own
     complete = all(bool(need.complete[row]) for row in rows) if rows else bool(need.complete[own])
-    names = (need.rated.hoop_formula, need.rated.axial_formula, need.rated.end_formula)
+    names = tuple(
+        getattr(rated, f"{way}_formula")
+        for rated in (need.rated, need.rated_pressure)
+        for way in ("hoop", "axial", "end")
+    )
     formulas = sorted({str(array[row]) for array in names for row in [*rows, own] if array[row]})
     return PartView(
         part=str(inputs.parts.part[part]),
@@ -265,6 +270,7 @@ def view_of(appraisal: Appraisal, i: int) -> VesselView:
         re_gauge_by=_re_gauge_by(appraisal, holds, i) if re_gauge else None,
         last_internal_on=None if bench.seen.no_internal[i] else _date(bench.seen.internal_day, i),
         last_external_on=None if bench.seen.no_external[i] else _date(bench.seen.external_day, i),
+        rules_status=rule_status(str(vessels.rules[i])),
     )
 
 

@@ -225,8 +225,10 @@ class VesselView:
     re_gauge_by: date | None
     last_internal_on: date | None
     last_external_on: date | None
+    rules_status: str = ""
+    """How well the values of its rule set are known, such as `secondary`."""
     sentence: str = field(default="")
-    """One sentence that says why the vessel has this standing."""
+    """One sentence that says why the vessel has this standing; where empty, the reports write their own."""
 
     def as_json(self, *, parts: bool = True) -> dict[str, Any]:
         """Give the object of the ``--json`` contract.

@@ -83,9 +83,9 @@ def say(text: str) -> None:
     Parameters
     ----------
     text : str
-        What to print [text].
+        What to print; its end of line is added where it lacks one [text].
     """
-    typer.echo(text)
+    typer.echo(text, nl=not text.endswith("\n"))
 
 
 def aside(text: str) -> None:

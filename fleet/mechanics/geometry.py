@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass, fields
 
 import numpy as np
+from numpy.typing import NDArray
 
 from fleet.formula import Floats
 from fleet.mechanics.figures import Codes, Rows, Texts
@@ -108,13 +109,13 @@ class Geometry:
     def __len__(self) -> int:
         return len(self.shape)
 
-    def only(self, rows: Rows) -> Geometry:
-        """Give the rows where `rows` is true.
+    def only(self, rows: Rows | NDArray[np.int64]) -> Geometry:
+        """Give some of the rows.
 
         Parameters
         ----------
-        rows : array of bool
-            Which rows [-].
+        rows : array of bool or int
+            Which rows, by mask or by number [-].
 
         Returns
         -------

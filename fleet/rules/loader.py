@@ -122,6 +122,28 @@ def load_rule_set(name: str) -> RuleSet:
     return RuleSet(values={key: _value(path, key, entry) for key, entry in document.items()}, **head)
 
 
+def rule_status(name: str) -> str:
+    """Say how well the values of a rule set are known.
+
+    Parameters
+    ----------
+    name : str
+        Name of the rule set [text].
+
+    Returns
+    -------
+    str
+        The statuses that occur, best known first [text].
+
+    Examples
+    --------
+    >>> rule_status("api510")
+    'secondary'
+    """
+    found = {value.status for value in load_rule_set(name).values.values()}
+    return ", ".join(status for status in STATUSES if status in found)
+
+
 def _value(path: Path, key: str, entry: dict[str, Any]) -> RuleValue:
     fields = ("value", "unit", "meaning", "clause", "status", "source")
     if set(entry) != set(fields) or entry["status"] not in STATUSES:

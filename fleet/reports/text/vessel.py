@@ -108,7 +108,9 @@ def _dates(view: VesselView, figures: Figures) -> list[str]:
     ]
     lines = table([Head(""), Head("", right=True), Head("", wraps=True)], rows)[1:]
     plateau = plateau_sentence(view, figures)
-    return lines + (paragraph(plateau, indent=5) if plateau else [])
+    said = [plateau] if plateau else []
+    said.append(f"Rates, life, intervals and twice the loss by {view.rules} (known as: {view.rules_status}).")
+    return lines + [line for text in said for line in paragraph(text, indent=5)]
 
 
 def _due_by(view: VesselView, figures: Figures) -> str:
@@ -140,18 +142,21 @@ def _ways_out(view: VesselView, figures: Figures) -> list[str]:
     if ways is None:
         return []
     said = []
-    if ways.rating_holds_until is not None:
-        said.append(
-            f"Look again by {ways.rating_holds_until.isoformat()}: to that day the current MAWP holds."
-        )
+    until, renew = ways.rating_holds_until, ways.renew_by
+    if until is not None and until < view.as_of:
+        said.append(f"With twice the loss the current MAWP has not held since {until.isoformat()}.")
+    elif until is not None:
+        said.append(f"Look again by {until.isoformat()}: to that day the current MAWP holds.")
     reaches, current = ways.pressure_that_reaches_mpa, view.current_mawp_mpa
     if reaches is None or view.carry_to_on is None:
         said.append("No lower pressure reaches the carry-to date, or none can be had.")
     elif current is None or reaches < current:
         pressure = figures.with_unit(figures.carries(reaches), "pressure")
         said.append(f"Re-rate to {pressure}: the wall carries that to {view.carry_to_on.isoformat()}.")
-    if ways.renew_by is not None:
-        said.append(f"Repair or renew by {ways.renew_by.isoformat()}.")
+    if renew is not None and renew < view.as_of:
+        said.append(f"Repair or renewal has been due since {renew.isoformat()}.")
+    elif renew is not None:
+        said.append(f"Repair or renew by {renew.isoformat()}.")
     return [line for text in said for line in paragraph(text, indent=5)]
 
 

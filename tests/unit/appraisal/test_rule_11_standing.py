@@ -122,11 +122,18 @@ def test_rule_11_4_running_out_within_ten_years() -> None:
 
 
 def test_rule_11_4_running_out_within_twice_the_internal_interval() -> None:
-    # L1 on the short-life plateau sets an interval of 2 years; as-of plus 4 years = 1461 days
+    # the shell, life 3 years, sets an interval of 2: as-of 2024-02-01 plus 4 years of 1461 days is 2028-02-01
     fleet = steady(10.75, 0.25, next_survey_day=ordinal("2024-03-01"))
+    add_steady(fleet, 0, "within", 11.02, 0.25, structural_minimum_mm=10.0)  # life 4.08 years: 2028-01-30
+    add_steady(fleet, 0, "beyond", 11.75, 0.25, structural_minimum_mm=10.0)  # life 7 years
     view = fleet.view("2024-02-01")
     assert view.internal_interval_years == pytest.approx(2.0)
-    assert view.standing == "running out"  # life of 3 years < 4
+    assert view.standing == "running out"
+    assert [part.locations[0].standing for part in view.parts] == [
+        "running out",
+        "running out",
+        "rating held",
+    ]
 
 
 def test_rule_11_5_flag_overdue() -> None:
