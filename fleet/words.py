@@ -196,7 +196,7 @@ DOUBTS = _words(
     ("thin torispherical head", "the head is thinner than 0.002 of its crown radius; the formula may overstate it", "have the head calculated by the thin-head rules"),
     ("head proportions not checked", "a diameter, crown or knuckle radius is missing to judge the proportions of the head", "load inside_diameter, crown_radius and knuckle_radius"),
     ("cover bolts not assessed", "the cover is bolted through a gasket; the moment of its bolts is not in the figure", "have the cover calculated with its bolt load"),
-    ("edition unknown", "code_edition gives no year; the older, lesser thick-wall form is used", "load code_edition"),
+    ("edition unknown", "code_edition gives no year; the lesser of the two thick-wall forms is used", "load code_edition"),
     ("lining not said to count", "lining_counts_in_strength is blank; taken as no", "load lining_counts_in_strength"),
 )  # fmt: skip
 

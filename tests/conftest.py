@@ -74,8 +74,8 @@ def _emptied(address: str) -> str:
 def blank_address(request: pytest.FixtureRequest, tmp_path: Path) -> Iterator[str]:
     """Give the address of a database with nothing in it."""
     if request.param == "sqlite":
-        (tmp_path / "fleet.db").touch()
-        yield str(tmp_path / "fleet.db")
+        (tmp_path / "blank.db").touch()
+        yield str(tmp_path / "blank.db")
     else:
         yield from _postgres()
 

@@ -74,11 +74,11 @@ def read_moment(text: str) -> datetime:
         return datetime.combine(day, time.max, tzinfo=UTC)
     try:
         moment = datetime.fromisoformat(text.strip())
-    except ValueError:
+        return moment.replace(tzinfo=UTC) if moment.tzinfo is None else moment.astimezone(UTC)
+    except (ValueError, OverflowError):
         raise typer.BadParameter(
             f"{text!r} is neither a date nor a time; write 2026-12-01 or 2026-12-01T08:30:00"
         ) from None
-    return moment.replace(tzinfo=UTC) if moment.tzinfo is None else moment.astimezone(UTC)
 
 
 def _day(text: str) -> date | None:

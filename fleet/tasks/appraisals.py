@@ -30,6 +30,10 @@ SETTING_UNITS = {
 """What stands behind the figure of a setting in print [text]."""
 
 
+FIRST_YEAR, LAST_YEAR = 1800, 2200
+"""The years about which the record can be asked [year]."""
+
+
 @dataclass(frozen=True)
 class Appraised:
     """An appraisal with what a list prints beside it.
@@ -84,8 +88,13 @@ def appraise_fleet(
     UnknownTag
         If a tag is not on the register; it names the nearest.
     UsageProblem
-        If the carry-to date lies before the as-of date.
+        If the carry-to date lies before the as-of date, or one of them far outside any works' time.
     """
+    for option, day in (("--as-of", as_of), ("--carry-to", carry_to)):
+        if day is not None and not FIRST_YEAR <= day.year <= LAST_YEAR:
+            raise UsageProblem(
+                option, f"{day} is no day of a works", f"give one from {FIRST_YEAR} to {LAST_YEAR}"
+            )
     if carry_to is not None and carry_to < as_of:
         raise UsageProblem(
             "--carry-to", f"{carry_to} lies before the as-of date {as_of}", "give a date on or after it"

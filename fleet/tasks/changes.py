@@ -184,7 +184,7 @@ def _merged(table: str, kind: Kind, row: Row, before: Mapping[str, Any] | None) 
     if before is not None and before["written"]:
         written = json.loads(before["written"])
     for field, name in kept.items():
-        if _equal(row.values[field], values[field]):
+        if field not in row.values or _equal(row.values[field], values[field]):
             continue
         values[field] = row.values[field]
         written.pop(name, None)

@@ -1,24 +1,15 @@
-"""The demo through the installed command: what it builds, and that the works come out as their story says."""
+"""The folder of the demo: what it holds, that its record repeats its lists, and that nothing is built over it."""
 
 from __future__ import annotations
 
-import json
-import time
-import tomllib
 from collections import Counter
 from pathlib import Path
 from typing import Any
 
-import pytest
 from installed import document, fleet
 from listed import compare_list
 
-from fleet.store.places import data_folder
-
 AS_OF = ("--as-of", "2026-12-01")
-EXPECTED: dict[str, Any] = tomllib.loads(
-    (data_folder("sample_data") / "expected.toml").read_text(encoding="utf-8")
-)
 FILES = {
     "README.md",
     "brackwater_register.xlsx",
@@ -32,110 +23,39 @@ FILES = {
     "fleet.db",
 }
 
-pytestmark = pytest.mark.slow
 
-
-@pytest.fixture(scope="module")
-def built(tmp_path_factory: pytest.TempPathFactory) -> tuple[Path, str, float]:
-    """Build the demo once: its folder, what was printed, how long it took."""
-    folder = tmp_path_factory.mktemp("demo") / "brackwater"
-    began = time.perf_counter()
-    done = fleet("demo", folder)
-    assert done.returncode == 0, done.stderr
-    return folder, done.stdout, time.perf_counter() - began
-
-
-@pytest.fixture(scope="module")
-def listed(built: tuple[Path, str, float]) -> dict[str, dict[str, Any]]:
-    """Give the vessels of the yearly list by tag, as the demo wrote them."""
-    rows: list[dict[str, Any]] = json.loads((built[0] / "derating.json").read_text(encoding="utf-8"))
-    return {row["vessel"]: row for row in rows}
-
-
-def test_the_folder_holds_what_was_promised_and_nothing_else(built: tuple[Path, str, float]) -> None:
-    folder, printed, _ = built
-    assert {path.name for path in folder.iterdir()} == FILES
+def test_the_folder_holds_what_was_promised_and_nothing_else(brackwater: Path, demo_run: Any) -> None:
+    assert {path.name for path in brackwater.iterdir()} == FILES
     for name in FILES:
-        assert f"  {name} " in printed
+        assert f"  {name} " in demo_run.stdout
 
 
-def test_the_story_is_printed_with_the_caution_and_adds_up(built: tuple[Path, str, float]) -> None:
-    told = " ".join(built[1].split())
-    assert "fleet computes and records; it does not decide." in told
-    assert "as of 2026-12-01" in told
-    assert f"The register holds {EXPECTED['counts']['vessels']} vessels: " in told
-    assert f"= {EXPECTED['counts']['vessels']}." in told
+def test_things_were_entered_in_the_order_in_which_they_happened(brackwater: Path) -> None:
+    entries = document("journal", "show", db=brackwater / "fleet.db")
+    tasks = Counter(entry["task"] for entry in entries)
+    assert (entries[0]["task"], entries[-1]["task"]) == ("register load", "appraise")
+    assert {"register load", "survey load", "restart add", "state set", "decide", "appraise"} == set(tasks)
+    files = [entry["why"] for entry in entries if entry["task"] == "survey load"]
+    assert files == sorted(files)
 
 
-def test_it_takes_under_fifteen_seconds_on_a_free_machine(built: tuple[Path, str, float]) -> None:
-    assert built[2] < 60, "under 15 s on two cores with nothing else to do"
-
-
-@pytest.mark.parametrize("vessel", EXPECTED["vessel"], ids=lambda vessel: vessel["tag"])
-def test_every_vessel_stands_as_its_story_says(
-    listed: dict[str, dict[str, Any]], vessel: dict[str, Any]
-) -> None:
-    found = listed[vessel["tag"]]
-    assert (found["block"], found["flags"]) == (vessel["block"], vessel["flags"])
-    assert found["standing"] == vessel.get("standing", found["standing"])
-
-
-def test_every_vessel_of_the_register_is_in_exactly_one_block(listed: dict[str, dict[str, Any]]) -> None:
-    assert sorted(listed) == sorted(vessel["tag"] for vessel in EXPECTED["vessel"])
-    assert len(listed) == EXPECTED["counts"]["vessels"]
-
-
-def test_the_record_is_whole_and_holds_what_the_files_hold(built: tuple[Path, str, float]) -> None:
-    db = built[0] / "fleet.db"
-    assert document("journal", "verify", db=db)["whole"]
-    wrote: Counter[str] = Counter()
+def test_the_record_as_it_was_known_then_repeats_the_lists(brackwater: Path, tmp_path: Path) -> None:
+    db = brackwater / "fleet.db"
     entries = document("journal", "show", db=db)
-    for entry in entries:
-        wrote.update(entry["wrote"])
-    counts = EXPECTED["counts"]
-    assert len(entries) >= 10
-    assert wrote["vessel"] == counts["vessels"]
-    assert wrote["part"] == counts["parts"]
-    assert wrote["location"] == counts["locations"]
-    assert wrote["survey"] == counts["survey_files"]
-    assert wrote["restart"] == counts["restarts"]
-    assert wrote["appraisal"] == 1
-    events = [entry["task"] for entry in entries]
-    assert events[0] == "register load"
-    assert events[-1] == "appraise"
+    asked = (*AS_OF, "--known-at", next(one["at"] for one in reversed(entries) if one["task"] != "appraise"))
+    for command in ("due", "gaps"):
+        told = fleet(command, *asked, db=db).stdout
+        assert told == (brackwater / f"{command}.txt").read_text(encoding="utf-8")
+    assert fleet("appraise", *asked, db=db).stdout == (brackwater / "list.txt").read_text(encoding="utf-8")
+    listed = fleet("derating", "-o", tmp_path / "list.xlsx", "--json", *asked, db=db)
+    assert listed.stdout == (brackwater / "derating.json").read_text(encoding="utf-8")
+    compare_list(tmp_path / "list.xlsx", document("derating", *asked, db=db), count=34)
 
 
-def test_the_workbook_says_cell_by_cell_what_the_document_says(
-    built: tuple[Path, str, float], listed: dict[str, dict[str, Any]]
-) -> None:
-    compare_list(built[0] / "derating.xlsx", list(listed.values()), count=len(listed))
-
-
-def test_the_record_answers_as_the_demo_did(
-    built: tuple[Path, str, float], listed: dict[str, dict[str, Any]]
-) -> None:
-    folder = built[0]
-    db = folder / "fleet.db"
-    entries = document("journal", "show", db=db)
-    known = next(entry["at"] for entry in reversed(entries) if entry["task"] != "appraise")
-    again = document("derating", *AS_OF, "--known-at", known, db=db)
-    assert again == list(listed.values())
-    text = fleet("due", *AS_OF, "--known-at", known, db=db).stdout
-    assert text == (folder / "due.txt").read_text(encoding="utf-8")
-
-
-def test_the_refused_sheet_is_refused_and_its_thin_reading_told_first(built: tuple[Path, str, float]) -> None:
-    (sheet,) = (data_folder("sample_data") / "refused").glob("*.csv")
-    told = document("survey", "load", sheet, db=built[0] / "fleet.db", code=1)
-    assert told["loaded"] == 0
-    assert told["faults"]
-    assert told["thin"]
-
-
-def test_an_existing_demo_is_left_alone(built: tuple[Path, str, float]) -> None:
-    before = (built[0] / "fleet.db").read_bytes()
-    again = fleet("demo", built[0])
+def test_nothing_is_built_over_an_existing_demo(brackwater: Path) -> None:
+    before = (brackwater / "fleet.db").read_bytes()
+    again = fleet("demo", brackwater)
     assert again.returncode == 1
     assert "fleet demo FOLDER" in again.stderr
-    assert (built[0] / "fleet.db").read_bytes() == before
-    assert {path.name for path in built[0].iterdir()} == FILES
+    assert (brackwater / "fleet.db").read_bytes() == before
+    assert {path.name for path in brackwater.iterdir()} == FILES

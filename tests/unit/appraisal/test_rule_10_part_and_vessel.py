@@ -33,15 +33,15 @@ def test_rule_10_1_pressure_and_life_governed_by_different_locations() -> None:
     )
     # thick wall with a structural minimum near, and fast: life (13 - 10) / 0.5 = 6 years
     add_steady(fleet, 0, "skirted", 13.0, 0.5, structural_minimum_mm=10.0)
-    # thin wall, slow: carries less pressure, lives (8 - 5.12) / 0.05 = 57 years
-    add_steady(fleet, 0, "shell", 8.0, 0.05)
+    # thicker, slow, and twice as wide: carries less pressure, 100·14 / (1014 - 5.6), needs 1014 / 100.4 = 10.1 mm
+    add_steady(fleet, 0, "shell", 14.0, 0.05, inside_diameter_mm=2000.0)
     view = fleet.view("2024-06-01")
     assert view.governing_life == Place("skirted", "L1")
     assert view.governing_pressure == Place("shell", "L1")
     assert view.governing_due == Place("skirted", "L1")
     assert view.retirement_on == days_after(LAST, 2191)  # 6 years = 2191.5 days
-    wall = 8.0 - 2 * 0.05 * 366 / 365.25
-    assert view.projected_mawp_mpa == pytest.approx(100 * wall / (514 - 0.4 * wall), rel=1e-9)
+    wall = 14.0 - 2 * 0.05 * 366 / 365.25
+    assert view.projected_mawp_mpa == pytest.approx(100 * wall / (1014 - 0.4 * wall), rel=1e-9)
 
 
 def test_rule_10_1_earliest_retirement_is_not_shortest_life() -> None:

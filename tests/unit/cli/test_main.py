@@ -141,6 +141,7 @@ def test_a_reader_that_leaves_early_hears_nothing_more() -> None:
         ("show", "V-1", "--as-of", "20261201"),
         ("show", "V-1", "--as-of", "2026-13-01"),
         ("show", "V-1", "--known-at", "yesterday"),
+        ("show", "V-1", "--known-at", "0001-01-01T00:00:00+14:00"),
         ("show", "V-1", "--units", "metric"),
         ("due", "--until", "soon"),
         ("register", "load"),

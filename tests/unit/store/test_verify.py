@@ -7,9 +7,10 @@ from collections.abc import Callable, Iterator
 from typing import Any
 
 import pytest
-from sqlalchemy import Boolean, Connection, Date, Double, Engine, Integer, inspect
+from sqlalchemy import Boolean, Connection, Date, Double, Engine, Integer, inspect, text
 
 from fleet.store import journal
+from fleet.store.canonical import entry_hash, line, mark
 from fleet.store.journal import Finding
 from fleet.store.models import FACTS, Journal, table_of
 
@@ -110,8 +111,6 @@ def test_a_blanked_field_is_found(engine: Engine, fill: Fill) -> None:
 
 
 def test_an_altered_row_with_a_new_mark_is_found_in_its_entry(engine: Engine, fill: Fill) -> None:
-    from fleet.store.canonical import line, mark
-
     fill(engine)
     _unguarded(engine, "UPDATE setting SET value = '0.01 mm'")
     with engine.connect() as conn:
@@ -248,8 +247,6 @@ def test_a_printed_head_is_found_in_the_chain_also_in_part(engine: Engine, fill:
 
 def test_a_chain_made_anew_is_found_by_a_printed_head(engine: Engine, fill: Fill) -> None:
     """Somebody who alters an entry and reckons every later hash anew leaves a whole chain."""
-    from fleet.store.canonical import entry_hash
-
     fill(engine)
     with engine.connect() as conn:
         printed = journal.head(conn).hash
@@ -267,6 +264,17 @@ def test_a_chain_made_anew_is_found_by_a_printed_head(engine: Engine, fill: Fill
     _unguarded(engine, *statements, f"UPDATE journal_head SET hash = '{previous}'")
     assert _found(engine) == []
     assert len(_found(engine, printed)) == 1
+
+
+def test_an_entry_with_a_new_hash_of_its_own_is_not_followed_by_the_next(engine: Engine, fill: Fill) -> None:
+    fill(engine)
+    with engine.connect() as conn:
+        [row] = (
+            dict(each) for each in conn.execute(table_of(Journal).select().where(text("no = 1"))).mappings()
+        )
+    digest = entry_hash({**row, "by": "N. Obody"})
+    _unguarded(engine, f"UPDATE journal SET by = 'N. Obody', hash = '{digest}' WHERE no = 1")
+    assert _named(engine) == [("altered", 2, "journal", 2)]
 
 
 def test_a_head_that_points_elsewhere_is_found(engine: Engine, fill: Fill) -> None:

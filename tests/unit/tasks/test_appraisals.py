@@ -48,6 +48,15 @@ def test_carrying_back_in_time_is_no_question(surveyed: Engine) -> None:
         appraise_fleet(surveyed, as_of=TODAY, carry_to=date(2026, 11, 30))
 
 
+@pytest.mark.parametrize("day", [date.min, date(1799, 12, 31), date(2201, 1, 1), date.max])
+def test_a_day_outside_any_works_time_is_no_question(surveyed: Engine, day: date) -> None:
+    with pytest.raises(UsageProblem, match="is no day of a works"):
+        appraise_fleet(surveyed, as_of=day)
+    if day > TODAY:
+        with pytest.raises(UsageProblem, match="--carry-to"):
+            appraise_fleet(surveyed, as_of=TODAY, carry_to=day)
+
+
 def test_the_carry_to_date_asked_for_is_the_one_answered(surveyed: Engine) -> None:
     view = show_vessel(surveyed, "V-101", as_of=TODAY, carry_to=date(2029, 1, 1))
     assert view.carry_to_on == date(2029, 1, 1)
