@@ -180,6 +180,7 @@ DOUBTS = _words(
     ("baseline incomplete", "a baseline needs its thickness and its date, and one of the two is blank", "load both; until then there is no baseline"),
     # of an appraisal
     ("queried low reading governs", "a queried reading lower than its history expects goes on governing", "re-take it; void it only with evidence"),
+    ("rate without queried readings", "the planning rate is greater without the queried readings and is taken without them", "re-take the queried readings or clear them"),
     ("queried high reading left out", "a queried reading higher than its history expects does not count", "re-take it or clear it"),
     ("baseline equals nominal", "the baseline equals nominal to the last digit and is taken as nominal", "measure the wall; plate is seldom delivered at nominal"),
     ("chosen rate lapsed", "the chosen planning rate has lapsed; the measured rates govern", "choose again on the new readings"),

@@ -137,6 +137,10 @@ def _readings(book: NoteBook, bench: Bench) -> None:
         "queried low reading governs", "location", found.queried_low & found.live, "a queried reading governs"
     )
     book.add(
+        "rate without queried readings", "location", found.without_queried & found.live,
+        "the planning rate is greater without them",
+    )  # fmt: skip
+    book.add(
         "queried high reading left out",
         "location",
         found.queried_high & found.live,

@@ -8,13 +8,14 @@ import numpy as np
 
 from fleet.appraisal.groups import any_by, count_by, greatest_by
 from fleet.appraisal.inputs import Bools, Floats, Inputs, Ints
-from fleet.appraisal.restarts import RestartIndex, present_histories
+from fleet.appraisal.rates import Ground, rates
+from fleet.appraisal.restarts import RestartIndex
 from fleet.appraisal.strength import strength
 from fleet.appraisal.visits import Visits, visits
 from fleet.thinning.clock import ServiceClock
 from fleet.thinning.histories import History, Starts
-from fleet.thinning.observations import Measured, observations
-from fleet.thinning.planning import Chosen, Planning, SharedShift, planning, shared_shift, short_term_in_doubt
+from fleet.thinning.observations import Measured
+from fleet.thinning.planning import Chosen, Planning, SharedShift
 
 
 @dataclass(frozen=True)
@@ -43,6 +44,8 @@ class Thinned:
         Lined and no word whether the last reading includes it; or its thickness is not recorded [-].
     queried_low, queried_high : ndarray
         Whether a queried reading governs or was left out [-].
+    without_queried : ndarray
+        Where the rate is taken without the queried readings, because it is the greater so [-].
     baseline_is_nominal : ndarray
         Whether a baseline equal to nominal was taken as nominal [-].
     readings : ndarray
@@ -64,6 +67,7 @@ class Thinned:
     lining_unknown: Bools
     queried_low: Bools
     queried_high: Bools
+    without_queried: Bools
     baseline_is_nominal: Bools
     readings: Ints
     last_row: Ints
@@ -95,35 +99,36 @@ def thinned(inputs: Inputs, clock: ServiceClock, as_of_day: float) -> Thinned:
     usable = np.flatnonzero(~np.isnan(read.wall_mm) & ~read.is_nominal)
     at = read.location[usable]
     queried = np.asarray(inputs.readings.status[read.row[usable]] == "queried", dtype=np.bool_)
-    seen = observations(
+    vessel = parts.vessel[part]
+    first_metal = read.is_nominal & (metal == 0)
+    baseline_day = greatest_by(np.where(first_metal, read.day, np.nan), read.location, count)
+    starts = Starts(vessel, read.nominal_mm, np.fmax(inputs.vessels.in_service_day[vessel], baseline_day))
+    found = rates(
         Measured(
             at, read.day[usable], read.wall_mm[usable], inputs.readings.error_mm[read.row[usable]], queried,
             span[usable], metal[usable],
         ),
-        count, read.nominal_mm, place.observation_window_days,
+        Ground(
+            part=part,
+            parts=len(parts),
+            live=live,
+            starts=starts,
+            index=index,
+            clock=clock,
+            window_days=place.observation_window_days,
+            expected=parts.expected_rate_mm_per_year[part],
+            floor=place.rate_floor_mm_per_year,
+            chosen=_chosen(inputs, as_of_day),
+            as_of_day=as_of_day,
+        ),
     )  # fmt: skip
-    vessel = parts.vessel[part]
-    baseline_day = greatest_by(np.where(read.is_nominal, read.day, np.nan), read.location, count)
-    starts = Starts(vessel, read.nominal_mm, np.fmax(inputs.vessels.in_service_day[vessel], baseline_day))
-    expected, floor = parts.expected_rate_mm_per_year[part], place.rate_floor_mm_per_year
-    now, old_rate = present_histories(
-        seen, index, starts, place.observation_window_days, clock, expected, floor, as_of_day
-    )
-    shift = shared_shift(now, part, len(parts))
-    chosen = _chosen(inputs, as_of_day)
-    restarted = index.number > 0
-
-    def plan(leave_out_short: Bools | None) -> Planning:
-        return planning(
-            now, restarted=restarted, old_rate=old_rate, expected=expected, floor=floor,
-            as_of_day=as_of_day, chosen=chosen, leave_out_short=leave_out_short,
-        )  # fmt: skip
-
-    governed = plan(None)
-    in_doubt = short_term_in_doubt(now, governed, shift, part)
+    seen, now = found.seen, found.now
     gave_wall = np.zeros(len(read.row), dtype=np.bool_)
     gave_wall[usable] = seen.counted
     present = span[usable] == index.number[at]
+    metal_now = index.new_metal()
+    same_metal = metal[usable] == metal_now[at]
+    rests = seen.counted & same_metal & (read.wall_mm[usable] <= now.wall_used_mm[at])
     last = (
         np.where(now.last_reading >= 0, usable[np.maximum(now.last_reading, 0)], -1)
         if len(usable)
@@ -135,15 +140,18 @@ def thinned(inputs: Inputs, clock: ServiceClock, as_of_day: float) -> Thinned:
         live=live,
         live_part=live_part,
         now=now,
-        plan=governed,
-        plan_long=plan(in_doubt),
-        in_doubt=in_doubt & live,
-        shift=shift,
+        plan=found.plan,
+        plan_long=found.plan_long,
+        in_doubt=found.in_doubt,
+        shift=found.shift,
+        without_queried=found.without_queried,
         visits=visits(inputs, read, gave_wall, index, live),
         deduct_mm=_at_last(read.deduct_mm, last),
-        lining_not_told=_at_last(read.not_told.astype(np.float64), last) > 0,
-        lining_unknown=_at_last(read.unknown.astype(np.float64), last) > 0,
-        queried_low=any_by(queried & seen.counted & present, at, count),
+        lining_not_told=(_at_last(read.not_told.astype(np.float64), last) > 0)
+        | any_by(rests & read.not_told[usable], at, count),
+        lining_unknown=(_at_last(read.unknown.astype(np.float64), last) > 0)
+        | any_by(rests & read.unknown[usable], at, count),
+        queried_low=any_by(queried & seen.counted & same_metal, at, count),
         queried_high=any_by(queried & ~seen.counted & present, at, count),
         baseline_is_nominal=any_by(read.is_nominal, read.location, count),
         readings=count_by(seen.counted & present, at, count),

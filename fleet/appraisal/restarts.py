@@ -96,6 +96,19 @@ class RestartIndex:
         total = np.concatenate(([0], np.cumsum(self.metal))).astype(np.int64)
         return np.asarray(total[self.first + self.number] - total[self.first], dtype=np.int64)
 
+    def last_day(self) -> Floats:
+        """Give the day of the last restart of every location.
+
+        Returns
+        -------
+        ndarray
+            NaN where there was none; shape (locations,) [day].
+        """
+        out = np.full(len(self.first), np.nan)
+        has = self.number > 0
+        out[has] = self.day[(self.first + self.number - 1)[has]]
+        return out
+
     def begin(self, rank: int) -> Beginning:
         """Say how the histories of one rank begin.
 

@@ -6,7 +6,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from fleet.appraisal.groups import any_by, greatest_by
+from fleet.appraisal.groups import greatest_by
 from fleet.appraisal.inputs import Bools, Floats, Inputs
 from fleet.appraisal.restarts import RestartIndex
 from fleet.appraisal.strength import Strength
@@ -19,7 +19,7 @@ class Visits:
     Parameters
     ----------
     no_echo : ndarray
-        Whether the last visit to the location gave no echo and no thickness; shape (locations,) [-].
+        Whether a visit to the location gave no echo and none since gave a thickness; shape (locations,) [-].
     not_read : ndarray
         Whether the location was passed over at its part's last visit; shape (locations,) [-].
     last_day : ndarray
@@ -66,7 +66,8 @@ def visits(inputs: Inputs, read: Strength, gave_wall: Bools, index: RestartIndex
     last = greatest_by(day, seen, count)
     last_read = greatest_by(np.where(gave_wall[present], day, np.nan), seen, count)
     silent = np.asarray(inputs.readings.result[read.row[present]] == "no echo", dtype=np.bool_)
-    no_echo = any_by(silent & (day == last[seen]), seen, count) & ~(last_read >= last)
+    silent_day = greatest_by(np.where(silent, day, np.nan), seen, count)
+    no_echo = ~np.isnan(silent_day) & ~(last_read >= silent_day)
 
     used = np.where(live, last, np.nan)
     used_read = np.where(live, last_read, np.nan)

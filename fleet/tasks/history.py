@@ -10,6 +10,7 @@ from fleet.errors import CheckFailed
 from fleet.store import Connection, Engine, facts, guard, journal, models
 from fleet.store import engine as engines
 from fleet.tasks.names import fetch_names
+from fleet.tasks.printing import counted
 from fleet.tasks.reader import Reader
 
 
@@ -142,7 +143,7 @@ class Verified:
         count = len(self.findings) + len(self.guard_missing)
         return CheckFailed(
             self.place,
-            f"the check of the journal found {count} thing{'s' if count > 1 else ''}",
+            f"the check of the journal found {counted(count, 'thing')}",
             "keep the file as it is and compare it with the last backup",
         )
 
@@ -167,7 +168,7 @@ class Verified:
 
     def text(self) -> str:
         """Set it out for reading."""
-        head = f"{self.no} entries, head {self.hash}"
+        head = f"entry {self.no}, head {self.hash}"
         if self.whole:
             return f"{self.place}: the journal is whole: {head}"
         lines = [f"{self.place}: the journal is not whole: {head}"]

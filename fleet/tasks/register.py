@@ -17,12 +17,21 @@ from fleet.tasks.changes import KINDS, Change, Compared, Path, compare, register
 from fleet.tasks.files import Waiting, new_parked, record_files, settled, waiting_on_record
 from fleet.tasks.known import OnRecord, fetch_on_record
 from fleet.tasks.names import Names
+from fleet.tasks.printing import counted
 from fleet.tasks.reader import Reader
 from fleet.tasks.starting import Starting, starting_values
 from fleet.words import Notice
 
 NOT_KEPT = frozenset({"already loaded", "already on record"})
 """Doubts that are told once and not kept: they say that nothing was done [text]."""
+
+
+_ONE_OF = {
+    **{table: kind.entity for table, kind in KINDS.items()},
+    "inspections": "inspection",
+    "starting values": "starting value",
+}
+"""The word for one row of each table [text]."""
 
 
 @dataclass(frozen=True)
@@ -88,11 +97,11 @@ class RegisterLoaded:
     def sentence(self) -> str:
         """Say in a line or two what was done."""
         said = [f"{name} was loaded before; nothing of it was changed." for name in self.already_loaded]
-        rows = ", ".join(f"{count} {table}" for table, count in self.wrote.items())
+        rows = ", ".join(counted(count, _ONE_OF.get(table, table)) for table, count in self.wrote.items())
         verb = "Would be written" if self.dry_run else "Written"
         more = [f"{verb}: {rows}"] if rows else []
-        more += [f"{self.unchanged} rows say what is on record already"] if self.unchanged else []
-        more += [f"{self.parked} rows wait in 'fleet gaps'"] if self.parked else []
+        more += [f"On record already: {counted(self.unchanged, 'row')}"] if self.unchanged else []
+        more += [f"Waiting in 'fleet gaps': {counted(self.parked, 'row')}"] if self.parked else []
         said += [". ".join([*more, ""]).strip()] if more else []
         said += [f"Journal entry {self.entry_no}."] if self.entry_no is not None else []
         return " ".join(said)
@@ -211,7 +220,7 @@ def _refusal(intake: Intake) -> FileRefused:
     count = len(intake.faults)
     return FileRefused(
         names,
-        f"{count} fault{'s' if count != 1 else ''}; nothing of it was loaded",
+        f"{counted(count, 'fault')}; nothing of it was loaded",
         "correct them and load again, or load the good rows with --park-bad-rows",
         intake.faults,
         intake.doubts,

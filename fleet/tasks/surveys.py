@@ -13,6 +13,7 @@ from fleet.intake.results import Row, SurveyIntake
 from fleet.store import Engine, journal, models
 from fleet.tasks.files import new_parked, record_files, settled, waiting_on_record
 from fleet.tasks.known import OnRecord, fetch_history, fetch_on_record
+from fleet.tasks.printing import counted
 from fleet.tasks.reader import Reader
 from fleet.tasks.register import NOT_KEPT, doubt_row, refuse_if_overtaken
 from fleet.words import Notice
@@ -101,7 +102,7 @@ class SurveysLoaded:
         faults = tuple(one for file in out for one in file.faults)
         return FileRefused(
             ", ".join(file.name for file in out),
-            f"{len(faults)} fault{'s' if len(faults) != 1 else ''}; nothing of it was loaded",
+            f"{counted(len(faults), 'fault')}; nothing of it was loaded",
             "correct them and load again, or load the good rows with --park-bad-rows",
             faults,
             tuple(one for file in out for one in file.doubts),
@@ -126,9 +127,9 @@ def _file_line(file: FileLoaded, *, dry_run: bool) -> str:
     if file.already_loaded:
         return f"{file.name}: loaded before; nothing was changed."
     verb = "would be loaded" if dry_run else "loaded"
-    waits = f", {file.parked} rows wait in 'fleet gaps'" if file.parked else ""
+    waits = f", {counted(file.parked, 'row')} waiting in 'fleet gaps'" if file.parked else ""
     entry = f" Journal entry {file.entry_no}." if file.entry_no is not None else ""
-    return f"{file.name}: {file.loaded} readings {verb}{waits}.{entry}"
+    return f"{file.name}: {counted(file.loaded, 'reading')} {verb}{waits}.{entry}"
 
 
 def thin_text(thin: Sequence[Thin], units: str) -> str:
@@ -151,9 +152,7 @@ def thin_text(thin: Sequence[Thin], units: str) -> str:
     from fleet.units import display
 
     shown = display(units)
-    lines = [
-        f"Thin: {len(thin)} reading{'s' if len(thin) > 1 else ''} at or below alert or required thickness"
-    ]
+    lines = [f"Thin: {counted(len(thin), 'reading')} at or below alert or required thickness"]
     for one in thin:
         limits = [
             f"{name} {shown.text('length', one[f'{name}_thickness_mm'], 'up')}"

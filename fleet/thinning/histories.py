@@ -94,7 +94,9 @@ class History:
     least_measurable : ndarray
         Smallest rate that first and last observation can show [mm/year].
     gain_mm : ndarray
-        How much the last observation reads above the one before it [mm].
+        How much the last observation reads above the wall used before it [mm].
+    change_mm : ndarray
+        How much it reads above the observation before it; negative for a loss [mm].
     fitted_rate, fitted_error : ndarray
         Slope of the straight line through the observations and its standard error [mm/year].
     """
@@ -116,6 +118,7 @@ class History:
     nominal_rate: Floats
     least_measurable: Floats
     gain_mm: Floats
+    change_mm: Floats
     fitted_rate: Floats
     fitted_error: Floats
 
@@ -192,6 +195,7 @@ def history(
     none = np.full(n, np.nan)
     carried = begin.new_service & ~np.isnan(before.wall_used_mm) if before else np.zeros(n, dtype=np.bool_)
     carried_mm = np.where(carried, before.wall_used_mm, np.nan) if before else none
+    carried_last = np.where(carried, before.last_mm, np.nan) if before else none
     carried_error = np.where(carried, before.last_error_mm, np.nan) if before else none
 
     first_day = _pick(seen.day, first, some)
@@ -201,14 +205,18 @@ def history(
     used = np.fmin(_least(seen.wall_mm, start, stop), carried_mm)
     used_before = np.fmin(_least(seen.wall_mm, start, np.maximum(stop - 1, start)), carried_mm)
     previous_day = np.where(several, _pick(seen.day, previous, several), np.where(carried, begin.day, np.nan))
-    previous_mm = np.where(several, _pick(seen.wall_mm, previous, several), carried_mm)
+    previous_mm = np.where(several, _pick(seen.wall_mm, previous, several), carried_last)
     previous_error = np.where(several, _pick(seen.error_mm, previous, several), carried_error)
 
+    short_start = np.where(carried & ~several, carried_last, used_before)
+
     measured_then = some & (first_day - begin.day <= window_days)
+    # what opens the history is not an observation after the restart
+    opened = (begin.new_metal & measured_then) | (begin.new_service & some & (first_day <= begin.day))
     nominal_start = begin.new_metal & ~measured_then & ~np.isnan(starts.nominal_mm)
     begin_day = np.where(carried | nominal_start, begin.day, first_day)
     begin_mm = np.where(
-        carried, carried_mm, np.where(nominal_start, starts.nominal_mm, _pick(seen.wall_mm, first, some))
+        carried, carried_last, np.where(nominal_start, starts.nominal_mm, _pick(seen.wall_mm, first, some))
     )
     begin_error = np.where(carried, carried_error, _pick(seen.error_mm, first, some))
     two = several | (carried & some)
@@ -234,7 +242,7 @@ def history(
         last_error = np.where(kept, before.last_error_mm, last_error)
     return History(
         observations=number + carried,
-        after=number,
+        after=number - opened,
         last_day=last_day,
         last_mm=last_mm,
         last_error_mm=last_error,
@@ -244,15 +252,16 @@ def history(
         ),
         wall_used_mm=used,
         long_rate=long_rate,
-        short_rate=_rate(used_before, used, short_years, two),
+        short_rate=_rate(short_start, used, short_years, two),
         long_from_nominal=nominal_start & two,
-        short_loss_mm=np.where(two, np.maximum(used_before - used, 0.0), np.nan),
+        short_loss_mm=np.where(two, np.maximum(short_start - used, 0.0), np.nan),
         previous_error_mm=previous_error,
         long_years=long_years,
         short_years=short_years,
         nominal_rate=_rate(starts.nominal_mm, used, nominal_years, some),
         least_measurable=np.where(measurable, least, np.nan),
-        gain_mm=np.where(two, last_mm - previous_mm, np.nan),
+        gain_mm=np.where(two, last_mm - used_before, np.nan),
+        change_mm=np.where(two, last_mm - previous_mm, np.nan),
         fitted_rate=np.where(several, -fit.slope * 365.25, np.nan),
         fitted_error=np.where(several, fit.slope_error * 365.25, np.nan),
     )  # fmt: skip

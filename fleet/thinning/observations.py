@@ -6,7 +6,7 @@ in the k-th step.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, fields
 
 import numpy as np
 from numpy.typing import NDArray
@@ -47,6 +47,20 @@ class Measured:
     queried: Bools
     span: Ints
     metal: Ints
+
+    def only(self, rows: Bools) -> Measured:
+        """Give some of the readings.
+
+        Parameters
+        ----------
+        rows : ndarray of bool
+            Which; shape (n,) [-].
+
+        Returns
+        -------
+        Measured
+        """
+        return Measured(**{field.name: getattr(self, field.name)[rows] for field in fields(self)})
 
 
 @dataclass(frozen=True)
@@ -153,9 +167,9 @@ def _walk(
         opens = counts & ~joins
         groups[here] += opens
         counted[rows], group[rows] = counts, groups[here]
-        span_now[here] = measured.span[row]
+        span_now[here] = np.where(opens, measured.span[row], span_now[here])
         metal_now[here] = measured.metal[row]
-        open_day[here] = np.where(opens, day, np.where(joins, open_day[here], -np.inf))
+        open_day[here] = np.where(opens, day, open_day[here])
         higher = opens | (counts & ~(wall <= most[here]))
         most[here] = np.where(higher, wall, most[here])
         most_error[here] = np.where(higher, error, most_error[here])

@@ -86,7 +86,7 @@ def short_term_counts(now: History) -> Bools:
 
 def planning(
     now: History, *, restarted: Bools, old_rate: Floats, expected: Floats, floor: Floats, as_of_day: float,
-    chosen: Chosen | None = None, leave_out_short: Bools | None = None,
+    chosen: Chosen | None = None, leave_out_short: Bools | None = None, begun_day: Floats | None = None,
 ) -> Planning:  # fmt: skip
     """Choose the planning rate of every location.
 
@@ -108,6 +108,8 @@ def planning(
         Rates chosen by the engineer [-].
     leave_out_short : ndarray, optional
         Where the short-term rate is left out, to ask what the long-term rate would say; shape (n,) [-].
+    begun_day : ndarray, optional
+        Day of the restart that began the history, NaN where none: an earlier choice lapses; shape (n,) [day].
 
     Returns
     -------
@@ -149,8 +151,11 @@ def planning(
     if chosen is not None:
         given = ~np.isnan(chosen.rate)
         lapsed = given & ((now.last_day > chosen.decided_day) | (chosen.review_day <= as_of_day))
-        alone = given & ~lapsed & (chosen.rate < np.fmax(measured, expected)) & ~chosen.two_names
-        stands = given & ~lapsed & ~alone
+        if begun_day is not None:
+            lapsed |= given & (begun_day > chosen.decided_day)
+        bar = np.fmax(np.fmax(measured, expected), np.where(young, rate, np.nan))
+        alone = given & ~lapsed & (chosen.rate < bar) & ~chosen.two_names
+        stands = given & ~lapsed & ~(alone & ~(chosen.rate > np.where(np.isnan(rate), -1.0, rate)))
         rate, basis = np.where(stands, chosen.rate, rate), np.where(stands, CHOSEN, basis)
 
     under = rate < floor
@@ -200,7 +205,7 @@ def difference_errors(now: History) -> Floats:
     return np.where(apart, np.asarray(rate_difference_error(s=now.last_error_mm, d=d, D=D)), np.nan)
 
 
-def shared_shift(now: History, part: Ints, parts: int) -> SharedShift:
+def shared_shift(now: History, part: Ints, parts: int, live: Bools) -> SharedShift:
     """Test on the mean of a part whether most of its locations shifted together.
 
     Parameters
@@ -211,22 +216,27 @@ def shared_shift(now: History, part: Ints, parts: int) -> SharedShift:
         Index of the part of each location; shape (n,) [-].
     parts : int
         Number of parts [count].
+    live : ndarray
+        Locations in use; shape (n,) [-].
 
     Returns
     -------
     SharedShift
-        Shared where three or more locations can tell, more than half of them show a short-term rate above the
-        long-term one, and the mean of the differences exceeds three of its standard errors.
+        Shared where three or more locations can tell, more than half of them moved the same way, and the mean of the
+        differences, gains counted as they were read, exceeds three of its standard errors.
     """
     error = difference_errors(now)
-    can = ~np.isnan(error)
-    difference = np.where(can, now.short_rate - now.long_rate, 0.0)
+    can = ~np.isnan(error) & live
+    years = np.where(can, now.short_years, 1.0)
+    difference = np.where(can, -now.change_mm / years - now.long_rate, 0.0)
     number = np.bincount(part, can.astype(np.float64), parts)
     divisor = np.maximum(number, 1.0)
     mean = np.bincount(part, difference, parts) / divisor
     mean_error = np.sqrt(np.bincount(part, np.where(can, error, 0.0) ** 2, parts)) / divisor
     above = np.bincount(part, (can & (difference > 0)).astype(np.float64), parts)
-    shared = (number >= 3) & (above > number / 2) & (mean > 3 * mean_error)
+    below = np.bincount(part, (can & (difference < 0)).astype(np.float64), parts)
+    most = np.where(mean > 0, above, below) > number / 2
+    shared = (number >= 3) & most & (np.abs(mean) > 3 * mean_error)
     return SharedShift(shared, mean, mean_error)
 
 
@@ -251,7 +261,9 @@ def short_term_in_doubt(now: History, plan: Planning, shift: SharedShift, part: 
     """
     error = difference_errors(now)
     within = (now.short_rate - now.long_rate) < 3 * error
-    return np.asarray((plan.basis == SHORT) & within & ~shift.shared[part], dtype=np.bool_)
+    return np.asarray(
+        (plan.basis == SHORT) & within & ~(shift.shared & (shift.mean > 0))[part], dtype=np.bool_
+    )
 
 
 def merged(earlier: History, later: History, where: Bools) -> History:

@@ -31,7 +31,7 @@ def compare_list(book: Path, listed: list[dict[str, Any]], *, count: int) -> Non
     at = {str(name): number for number, name in enumerate(head) if name}
     objects = {vessel["vessel"]: vessel for vessel in listed}
     lines = [row for row in rows if row[at["Vessel"]] in objects]
-    assert sorted(row[at["Vessel"]] for row in lines) == sorted(objects)
+    assert sorted(str(row[at["Vessel"]]) for row in lines) == sorted(objects)
     assert len(lines) == len(listed) == count
     for row in lines:
         tag = row[at["Vessel"]]

@@ -140,6 +140,14 @@ def test_rule_10_5_no_echo_answered_by_a_thickness_is_over() -> None:
     assert fleet.view().standing == "rating held"
 
 
+def test_rule_10_5_no_echo_and_a_thickness_of_the_same_day_is_a_thickness() -> None:
+    fleet = pair()
+    fleet.read(SHELL_1, ("2025-06-01", None), result="no echo")
+    fleet.read(SHELL_1, ("2025-06-01", 12.9))
+    fleet.read(SHELL_2, ("2025-06-01", 12.9))
+    assert fleet.view().standing == "rating held"
+
+
 @pytest.mark.parametrize("result", ["no access", "lamination"])
 @pytest.mark.parametrize("again", ["2025-06-02", "2025-06-11"])
 def test_rule_10_5_no_echo_is_not_answered_by_another_failure_of_the_same_visit(

@@ -93,7 +93,7 @@ def test_rows_on_record_are_passed_over_in_another_file(surveyed: Engine, survey
 
 def test_dry_run_tells_and_writes_nothing(works: Engine, survey: Survey, entries: Count) -> None:
     loaded = survey(f"{HEAD}\nV-101,shell,1,2026-06-03,9.0\n", dry_run=True)
-    assert loaded.text() == "survey.csv: 1 readings would be loaded."
+    assert loaded.text() == "survey.csv: 1 reading would be loaded."
     assert len(loaded.thin) == 1
     assert entries() == 1
 
