@@ -129,6 +129,10 @@ class Appraisal:
         -------
         tuple of VesselView
         """
+        return self._views
+
+    @cached_property
+    def _views(self) -> tuple[VesselView, ...]:
         return tuple(self.vessel(i) for i in range(self.count))
 
     def index_of(self, tag: str) -> int:

@@ -85,6 +85,7 @@ def looked(inputs: Inputs, as_of_day: float) -> Looked:
     full = np.asarray(done.extent == "full", dtype=np.bool_) & (done.done_day <= as_of_day)
     stands = np.asarray(made.kind == "on-stream acceptance", dtype=np.bool_) & (made.decided_day <= as_of_day)
     stands &= ~(made.until_day < as_of_day) & ~(made.review_day < as_of_day)
+    stands &= np.asarray(made.reason != "", dtype=np.bool_)
     accepted = np.zeros(count, dtype=np.bool_)
     accepted[made.vessel[stands]] = True
     onstream = np.asarray(done.kind == "on-stream", dtype=np.bool_) & accepted[done.vessel]

@@ -35,7 +35,7 @@ def write_findings(
     """
     _never_measured(book, bench, measured, partless)
     _visits(book, bench)
-    _missing(book, bench, vacuum)
+    _missing(book, bench, judged, vacuum)
     _blank_choices(book, bench)
     _readings(book, bench)
     _rates(book, bench)
@@ -76,7 +76,7 @@ def _visits(book: NoteBook, bench: Bench) -> None:
              lambda row: f"last read {_day(found.now.last_day, row)}")  # fmt: skip
 
 
-def _missing(book: NoteBook, bench: Bench, vacuum: Bools) -> None:
+def _missing(book: NoteBook, bench: Bench, judged: Judged, vacuum: Bools) -> None:
     inputs, need, found = bench.inputs, bench.need, bench.found
     book.add("vacuum not assessed", "part", vacuum, lambda row: (
         "external design pressure "
@@ -91,6 +91,18 @@ def _missing(book: NoteBook, bench: Bench, vacuum: Bools) -> None:
     book.add("outside formula limits", "part", _by_part(bench, outside) & found.live_part,
              "the required wall at the current MAWP is outside the limits of every form")  # fmt: skip
     n = len(inputs.locations)
+    no_form = (
+        bench.trusted
+        & ~need.given_shape[:n]
+        & ~np.isnan(judged.projected_mm)
+        & np.isnan(judged.projected_mpa)
+    )
+    book.add(
+        "outside formula limits",
+        "location",
+        no_form,
+        "the projected wall is outside the limits of every form",
+    )
     short = need.given_shape[:n] & (found.now.wall_used_mm < need.known_mm[:n])
     book.add(
         "other part below given thickness",
@@ -217,18 +229,29 @@ def _vessels(book: NoteBook, bench: Bench, judged: Judged) -> None:
         f"asks for {_day(seen.deferral_day, row)}, the terms give {_day(due.internal_day, row)}"))  # fmt: skip
     tall = _slenderness(inputs, bench.found.live_part)
     ratio = load_rule_set("choices")["tall_ratio"]
-    told = any_by(~np.isnan(inputs.parts.required_thickness_axial_mm) & bench.found.live_part,
-                  inputs.parts.vessel, len(vessels))  # fmt: skip
-    book.add("wind and weight not assessed", "vessel", (tall > ratio) & ~told,
+    standing = bench.found.live_part & np.isin(inputs.parts.shape, ("cylinder", "cone"))
+    untold = any_by(
+        standing & np.isnan(inputs.parts.required_thickness_axial_mm), inputs.parts.vessel, len(vessels)
+    )
+    book.add("wind and weight not assessed", "vessel", (tall > ratio) & untold,
              lambda row: f"{tall[row]:.1f} diameters long")  # fmt: skip
 
 
 def _slenderness(inputs: Inputs, live: Bools) -> Floats:
-    """Length of all straight parts of a vessel over its greatest diameter."""
+    """Give the length of shell courses, cones and heads of each vessel over its greatest diameter."""
     parts, count = inputs.parts, len(inputs.vessels)
     shell = live & np.isin(parts.shape, ("cylinder", "cone"))
-    length = np.bincount(parts.vessel, np.where(shell, np.nan_to_num(parts.length_mm), 0.0), count)
     diameter = np.fmax(parts.inside_diameter_mm, parts.outside_diameter_mm)
+    crown, knuckle = parts.crown_radius_mm, parts.knuckle_radius_mm
+    with np.errstate(invalid="ignore"):
+        dish = crown - np.sqrt(np.square(crown - knuckle) - np.square(diameter / 2 - knuckle))
+    heads = ("hemispherical head", "ellipsoidal head", "torispherical head")
+    depth = np.select(
+        [np.asarray(parts.shape == head, dtype=np.bool_) for head in heads],
+        [np.fmax(crown, diameter / 2), diameter / (2 * parts.axis_ratio), dish],
+        np.where(shell, parts.length_mm, 0.0),
+    )
+    length = np.bincount(parts.vessel, np.where(live, np.nan_to_num(depth), 0.0), count)
     widest = greatest_by(np.where(shell, diameter, np.nan), parts.vessel, count)
     return np.where(widest > 0, length / np.where(widest > 0, widest, 1.0), np.nan)
 

@@ -210,8 +210,10 @@ def judge(bench: Bench, plan: Planning) -> Judged:
     trusted = bench.trusted
     required = np.where(trusted, need.required_mm[:count], np.nan)
     life = _life(wall, required, rate)
+    # what is known of a location that lacks something brings its date forward all the same; it is not shown
+    known_life = _life(wall, np.where(found.live, need.known_mm[:count], np.nan), rate)
     interval = np.asarray(
-        life_interval(RL=life, f=rules["half_life_fraction"], a=rules["short_life_below_years"],
+        life_interval(RL=known_life, f=rules["half_life_fraction"], a=rules["short_life_below_years"],
                       b=rules["short_life_interval_years"])
     )  # fmt: skip
     half_life_day = clock.later(vessel_of, last, interval)
@@ -238,12 +240,14 @@ def judge(bench: Bench, plan: Planning) -> Judged:
     worst = np.where(bench.withheld, np.minimum(worst, NONE), worst)
 
     shown = np.where(trusted, uncapped[:count], np.nan)
+    # a given limit below the current MAWP: no wall makes the rating hold
+    limited = trusted & (need.limit_mpa[:count] < need.current_mpa[:count] * (1 - TOLERANCE))
     return Judged(
         life_years=life,
-        interval_years=interval,
+        interval_years=np.where(trusted, interval, np.nan),
         retirement_day=retirement,
         half_life_day=half_life_day,
-        holds_day=day_when_down_to(bench, rate, required, factor),
+        holds_day=np.where(limited, last, day_when_down_to(bench, rate, required, factor)),
         projected_mm=projected,
         today_mm=today,
         mawp_today_mpa=np.where(trusted, today_mpa[:count], np.nan),
@@ -269,10 +273,10 @@ def _standings(
     known, current = need.known_mm[:count], need.current_mpa[:count]
     wall = now.wall_used_mm
     below = wall < known
-    at = wall - known < AT_REQUIRED_ERRORS * now.last_error_mm
+    at = wall - known < AT_REQUIRED_ERRORS * bench.found.wall_error_mm
     used = today < known
     short = (projected < known * (1 - TOLERANCE)) | (mawp < current * (1 - TOLERANCE))
-    unknown = ~bench.trusted | np.isnan(wall) | np.isnan(today)
+    unknown = ~bench.trusted | np.isnan(wall) | np.isnan(today) | np.isnan(mawp)
     running = retirement <= horizon
     return np.select(
         [below, at, used, short, unknown, running], [BELOW, AT, USED, SHORT, NONE, RUNNING], HELD

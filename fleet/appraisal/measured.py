@@ -46,6 +46,8 @@ class Thinned:
         Whether a queried reading governs or was left out [-].
     without_queried : ndarray
         Where the rate is taken without the queried readings, because it is the greater so [-].
+    wall_error_mm : ndarray
+        Reading error of the wall used [mm].
     baseline_is_nominal : ndarray
         Whether a baseline equal to nominal was taken as nominal [-].
     readings : ndarray
@@ -68,6 +70,7 @@ class Thinned:
     queried_low: Bools
     queried_high: Bools
     without_queried: Bools
+    wall_error_mm: Floats
     baseline_is_nominal: Bools
     readings: Ints
     last_row: Ints
@@ -145,6 +148,7 @@ def thinned(inputs: Inputs, clock: ServiceClock, as_of_day: float) -> Thinned:
         in_doubt=found.in_doubt,
         shift=found.shift,
         without_queried=found.without_queried,
+        wall_error_mm=found.wall_error_mm,
         visits=visits(inputs, read, gave_wall, index, live),
         deduct_mm=_at_last(read.deduct_mm, last),
         lining_not_told=(_at_last(read.not_told.astype(np.float64), last) > 0)

@@ -7,6 +7,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from fleet.appraisal.groups import greatest_by
 from fleet.appraisal.inputs import Bools, Floats, Ints
 from fleet.appraisal.restarts import RestartIndex, present_histories
 from fleet.thinning.clock import ServiceClock
@@ -90,6 +91,8 @@ class Rates:
         Parts whose locations shifted together; shape (parts,) [-].
     without_queried : ndarray
         Where the rate is taken without the queried readings, because it is the greater so [-].
+    wall_error_mm : ndarray
+        Reading error of the wall used: the greatest of the readings it rests on and the last [mm].
     """
 
     seen: Observations
@@ -99,6 +102,7 @@ class Rates:
     in_doubt: Bools
     shift: SharedShift
     without_queried: Bools
+    wall_error_mm: Floats
 
 
 def rates(measured: Measured, ground: Ground) -> Rates:
@@ -138,7 +142,16 @@ def rates(measured: Measured, ground: Ground) -> Rates:
         in_doubt=in_doubt & ground.live,
         shift=shift,
         without_queried=without,
+        wall_error_mm=_wall_error(measured, seen, now, ground.index),
     )
+
+
+def _wall_error(measured: Measured, seen: Observations, now: History, index: RestartIndex) -> Floats:
+    """Give the reading error of the wall used."""
+    same_metal = measured.metal[seen.reading] == index.new_metal()[seen.location]
+    rests = same_metal & (seen.wall_mm <= now.wall_used_mm[seen.location])
+    of_wall = greatest_by(np.where(rests, seen.error_mm, np.nan), seen.location, len(now.last_error_mm))
+    return np.fmax(of_wall, now.last_error_mm)
 
 
 def _walk(measured: Measured, ground: Ground) -> tuple[Observations, History, Floats]:

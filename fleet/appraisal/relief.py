@@ -45,6 +45,10 @@ def falls_to(bench: Bench, rate: Floats, vessel: Ints, pressure_mpa: Floats) -> 
     at_part = pressure_mpa[asked] + bench.need.head_mpa[row]
     rated = required_wall(bench.need.geometry.only(row), at_part)
     wall = np.fmax(np.fmax(rated.hoop, rated.axial), rated.end)
+    # shape `other` carries the current MAWP down to its given thickness, and no more is known
+    given = bench.need.given_shape[row]
+    wall = np.where(given, bench.need.geometry.required_given_mm[row], wall)
+    beyond_given = given & (pressure_mpa[asked] > bench.need.current_mpa[row])
     factor = rule_values(bench.inputs, "loss_factor")[bench.vessel_of[row]]
     needed = np.full(len(bench.inputs.locations), np.nan)
     day = np.full(len(asked), np.nan)
@@ -65,7 +69,7 @@ def falls_to(bench: Bench, rate: Floats, vessel: Ints, pressure_mpa: Floats) -> 
         day[now] = day_when_down_to(bench, rate, needed, loss)[row[now]]
     out = least_by(day, asked, len(vessel))
     over_limit = np.zeros(len(vessel), dtype=np.bool_)
-    over = pressure_mpa[asked] > bench.need.limit_mpa[row]
+    over = (pressure_mpa[asked] > bench.need.limit_mpa[row]) | beyond_given
     over_limit[asked[over]] = True
     cap = bench.need.cap_mpa
     vessel_cap = np.full(len(bench.inputs.vessels), np.nan)

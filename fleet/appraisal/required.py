@@ -23,7 +23,8 @@ from fleet.mechanics.rating import (
 
 SETS: tuple[str, ...] = ("hoop", "axial", "end", "structural", "external", "axial load", "given")
 """What may set a required thickness, in the words of the ``--json`` contract."""
-_NOT_PRESSURE = (3, 4, 5)
+NOT_PRESSURE: tuple[str, ...] = ("structural", "external", "axial load")
+"""Those of them that are no matter of internal pressure."""
 
 
 @dataclass(frozen=True)
@@ -113,7 +114,7 @@ class Needs:
         with np.errstate(invalid="ignore"):
             at_part = np.fmin(np.fmin(rated.hoop, rated.axial), rated.end)
             given = np.where(wall_mm >= self.geometry.required_given_mm, self.current_mpa, np.nan)
-            top = np.where(self.given_shape, given, at_part - self.head_mpa)
+            top = np.where(self.given_shape, given, at_part - np.nan_to_num(self.head_mpa))
             uncapped = np.where(np.isnan(top), np.nan, np.fmin(np.maximum(top, 0.0), self.limit_mpa))
         return np.minimum(uncapped, self.cap_mpa), uncapped
 
@@ -228,7 +229,8 @@ def needs(inputs: Inputs, pressures: Pressures) -> Needs:
     given_shape = np.asarray(shape_of_rows.shape == "other", dtype=np.bool_)
     head = parts.static_head_mpa[part]
     current = pressures.current_mpa[vessel]
-    rated = required_wall(shape_of_rows, current + head)
+    # with the static head unknown the wall at no head is still a lower bound; it is known, and not shown
+    rated = required_wall(shape_of_rows, current + np.nan_to_num(head))
     walls = np.stack(
         (
             rated.hoop,
@@ -255,7 +257,9 @@ def needs(inputs: Inputs, pressures: Pressures) -> Needs:
     complete = (
         ~lacks & ~no_formula & ~np.isnan(current) & (given_shape | (pressure_known & (rated.domain == 0)))
     )
-    not_pressure = np.nan_to_num(np.max(ranked[list(_NOT_PRESSURE)], axis=0), neginf=0.0)
+    not_pressure = np.nan_to_num(
+        np.max(ranked[[SETS.index(name) for name in NOT_PRESSURE]], axis=0), neginf=0.0
+    )
     return Needs(
         part=part,
         vessel=vessel,

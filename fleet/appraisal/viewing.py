@@ -10,10 +10,10 @@ import numpy as np
 from fleet import words
 from fleet.appraisal.due import DUE
 from fleet.appraisal.inputs import Floats
-from fleet.appraisal.judge import HELD
-from fleet.appraisal.required import SETS
+from fleet.appraisal.judge import HELD, SHORT
+from fleet.appraisal.required import NOT_PRESSURE, SETS
 from fleet.appraisal.views import LocationView, PartView, Place, ReliefView, VesselView, WaysOut
-from fleet.rules import rule_status
+from fleet.rules import load_rule_set, rule_status
 from fleet.thinning.clock import DAYS_PER_YEAR
 from fleet.thinning.planning import BASES
 from fleet.words import STANDINGS, Notice
@@ -116,7 +116,7 @@ def location_view(appraisal: Appraisal, row: int, doubts: tuple[Notice, ...]) ->
         short_span_years=_number(now.short_years, row),
         fitted_rate_mm_per_year=_number(now.fitted_rate, row),
         fitted_rate_error_mm_per_year=_number(now.fitted_error, row),
-        reading_error_mm=_number(now.last_error_mm, row),
+        reading_error_mm=_number(found.wall_error_mm, row),
         wall_in_strength_mm=used if trusted else None,
         projected_mawp_uncapped_mpa=_number(judged.uncapped_mpa, row),
     )
@@ -207,7 +207,7 @@ def view_of(appraisal: Appraisal, i: int) -> VesselView:
     ]
     governing = int(due.governing[i])
     life = float(judged.life_years[governing]) if governing >= 0 else float("nan")
-    plateau = governing >= 0 and life < 4.0
+    plateau = life < load_rule_set(str(vessels.rules[i]))["short_life_below_years"]
     carry_day = float(carry.day[i])
     soon = carry_day < carry.list_end_day
     re_gauge = bool(appraisal.re_gauge[i])
@@ -258,7 +258,7 @@ def view_of(appraisal: Appraisal, i: int) -> VesselView:
         held_by_half_life=carry.basis[i] == DUE
         and governing >= 0
         and not plateau
-        and standing == words.RATING_HELD,
+        and standing in {words.RATING_HELD, words.RUNNING_OUT},
         clause_interval_years=_number(due.interval_years, i) if plateau else None,
         half_life_on_plateau_years=life / 2 if plateau else None,
         ways_out=None
@@ -333,9 +333,17 @@ def _ways_out(
     appraisal: Appraisal, i: int, parts: tuple[PartView, ...], holds: date | None, retirement: date | None
 ) -> WaysOut:
     need, judged = appraisal.bench.need, appraisal.judged
-    by_minimum = any(judged.projected_mm[row] < need.not_pressure_mm[row] for row in _rows(appraisal, i))
+    rows = _rows(appraisal, i)
+    by_minimum = any(
+        judged.projected_mm[row] < need.not_pressure_mm[row]
+        or (judged.standing[row] <= SHORT and SETS[int(need.by[row])] in NOT_PRESSURE)
+        for row in rows
+    )
+    unknown = any(np.isnan(judged.projected_mpa[row]) for row in rows) or not all(
+        part.measured for part in parts
+    )
     reaches = _least([part.projected_mawp_mpa for part in parts])
-    return WaysOut(holds, None if by_minimum or not reaches else reaches, retirement)
+    return WaysOut(holds, None if by_minimum or unknown or not reaches else reaches, retirement)
 
 
 def _re_gauge_by(appraisal: Appraisal, holds: date | None, i: int) -> date | None:

@@ -230,6 +230,11 @@ class VesselView:
     sentence: str = field(default="")
     """One sentence that says why the vessel has this standing; where empty, the reports write their own."""
 
+    @property
+    def parts_known(self) -> int:
+        """Parts measured for which a pressure is known; a list that shows fewer than all says so."""
+        return sum(part.measured and part.projected_mawp_mpa is not None for part in self.parts)
+
     def as_json(self, *, parts: bool = True) -> dict[str, Any]:
         """Give the object of the ``--json`` contract.
 

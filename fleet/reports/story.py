@@ -188,10 +188,10 @@ def measured_words(view: VesselView) -> str:
     Returns
     -------
     str
-        Headed ``measured parts only`` where some part was never measured.
+        Headed ``measured parts only`` where some part was never measured, or lacks what its figures need.
     """
-    count = f"{view.parts_measured} of {view.parts_total}"
-    return count if view.parts_measured >= view.parts_total else f"measured parts only: {count}"
+    count = f"{view.parts_known} of {view.parts_total}"
+    return count if view.parts_known >= view.parts_total else f"measured parts only: {count}"
 
 
 def _opening(appraisal: AppraisalLike, serving: Sequence[VesselView]) -> str:

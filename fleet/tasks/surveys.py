@@ -15,7 +15,8 @@ from fleet.tasks.files import new_parked, record_files, settled, waiting_on_reco
 from fleet.tasks.known import OnRecord, fetch_history, fetch_on_record
 from fleet.tasks.printing import counted
 from fleet.tasks.reader import Reader
-from fleet.tasks.register import NOT_KEPT, doubt_row, refuse_if_overtaken
+from fleet.tasks.register import NOT_KEPT
+from fleet.tasks.writing import doubt_row, refuse_if_overtaken
 from fleet.words import Notice
 
 Thin = Mapping[str, Any]

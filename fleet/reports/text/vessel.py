@@ -57,7 +57,7 @@ def _answer(view: VesselView, figures: Figures) -> list[str]:
     if beside:
         lines += paragraph(f"Beside it: {', '.join(beside)}.", indent=5)
     measured = measured_words(view)
-    if view.parts_measured < view.parts_total:
+    if view.parts_known < view.parts_total:
         lines += paragraph(f"{measured[0].upper()}{measured[1:]}.", indent=5)
     return lines
 

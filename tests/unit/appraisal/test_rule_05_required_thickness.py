@@ -296,6 +296,8 @@ def test_rule_5_12_a_blank_datum_gives_no_figure_and_a_gap_that_names_it(
              "cover_factor": 0.3}  # fmt: skip
     if shape == "hemispherical head":
         every["crown_radius_mm"] = math.nan
+    if shape == "flat cover":
+        every["gasket_diameter_mm"] = 200.0  # 200·√(0.3·1/100) = 10.95 mm: the wall of 14 is enough at no head
     view = view_with(shape=shape, **(every | {blank: math.nan}))
     part = part_of(view)
     assert (part.required_thickness_mm, part.mawp_today_mpa, part.projected_mawp_mpa) == (None, None, None)
@@ -309,6 +311,13 @@ def test_rule_5_12_a_blank_datum_gives_no_figure_and_a_gap_that_names_it(
     gaps = [gap for gap in view.gaps if gap.code == "missing datum"]
     assert [gap.found for gap in gaps] == [f"{named} is blank"]
     assert "shell" in gaps[0].where
+
+
+def test_rule_5_12_a_wall_below_required_even_at_no_head_is_below_required() -> None:
+    # 1000·√(0.3·1/100) = 54.8 mm at no head; whatever the head, 14 mm is too little
+    view = view_with(shape="flat cover", cover_factor=0.3, static_head_mpa=math.nan)
+    assert part_of(view).required_thickness_mm is None
+    assert view.standing == "below required"
 
 
 def test_rule_5_12_a_head_of_nought_must_be_written_and_then_counts() -> None:
