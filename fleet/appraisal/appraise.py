@@ -19,7 +19,7 @@ from fleet.appraisal.relief import falls_to
 from fleet.appraisal.required import Pressures, needs, vessel_pressures
 from fleet.appraisal.viewing import view_of
 from fleet.appraisal.views import VesselView
-from fleet.thinning.clock import ServiceClock, whole_days
+from fleet.thinning.clock import ServiceClock
 
 
 @dataclass(frozen=True)
@@ -161,19 +161,27 @@ class Appraisal:
         Returns
         -------
         Timetable
-            For the as-of date plus 1, 2, ... years, with the loss factor of the rule set.
+            For the anniversaries of the as-of date, with the loss factor of the rule set.
         """
-        bench, days = self.bench, self.as_of.toordinal() + whole_days(np.arange(1, years + 1))
+        bench = self.bench
+        dates = tuple(_anniversary(self.as_of, k) for k in range(1, years + 1))
         locations = len(self.inputs.locations)
         factor = rule_values(self.inputs, "loss_factor")[bench.vessel_of]
         columns = []
-        for day in days.tolist():
-            wall = wall_on(bench, bench.found.plan.rate, np.full(locations, day), factor)
+        for day in dates:
+            wall = wall_on(bench, bench.found.plan.rate, np.full(locations, float(day.toordinal())), factor)
             capped, _ = bench.need.carries(bench.rows(wall))
             shown = np.where(bench.trusted, capped[:locations], np.nan)
             columns.append(least_by(shown, bench.vessel_of, self.count))
-        dates = tuple(date.fromordinal(int(day)) for day in days.tolist())
         return Timetable(dates, np.column_stack(columns), self.pressures.current_mpa)
+
+
+def _anniversary(day: date, years: int) -> date:
+    """Give the same day some years later; 28 February for a leap day where there is none."""
+    try:
+        return day.replace(year=day.year + years)
+    except ValueError:
+        return day.replace(year=day.year + years, day=28)
 
 
 def _rows_by(group: Ints, use: Bools, groups: int) -> list[list[int]]:

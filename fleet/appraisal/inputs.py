@@ -80,7 +80,10 @@ class Table:
 
 @dataclass(frozen=True)
 class Vessels(Table):
-    """One row per vessel of the register, in the order of the list."""
+    """One row per vessel of the register, in the order of the list.
+
+    `*_written` are pressures as somebody wrote them, with their unit.
+    """
 
     tag: Texts
     site: Texts
@@ -103,6 +106,9 @@ class Vessels(Table):
     external_design_pressure_mpa: Floats
     operating_pressure_mpa: Floats
     next_survey_day: Floats
+    nameplate_mawp_written: Texts
+    current_mawp_written: Texts
+    operating_pressure_written: Texts
 
 
 @dataclass(frozen=True)
@@ -235,11 +241,12 @@ class Decisions(Table):
 
 @dataclass(frozen=True)
 class Relief(Table):
-    """One row per relief device linked to a vessel."""
+    """One row per relief device linked to a vessel; `written` is the setting as somebody wrote it."""
 
     vessel: Ints
     device: Texts
     set_pressure_mpa: Floats
+    written: Texts
 
 
 @dataclass(frozen=True)

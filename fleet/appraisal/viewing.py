@@ -211,6 +211,7 @@ def view_of(appraisal: Appraisal, i: int) -> VesselView:
     carry_day = float(carry.day[i])
     soon = carry_day < carry.list_end_day
     re_gauge = bool(appraisal.re_gauge[i])
+    deciding = [row for row in in_doubt if judged.standing[row] != HELD] or in_doubt
     return VesselView(
         vessel=str(vessels.tag[i]),
         as_of=appraisal.as_of,
@@ -262,14 +263,19 @@ def view_of(appraisal: Appraisal, i: int) -> VesselView:
         clause_interval_years=_number(due.interval_years, i) if plateau else None,
         half_life_on_plateau_years=life / 2 if plateau else None,
         ways_out=None
-        if judged.vessel_standing[i] == HELD
+        if judged.vessel_standing[i] == HELD or str(vessels.state[i]) == words.RETIRED
         else _ways_out(appraisal, i, parts, holds, retirement),
-        re_gauge=tuple(found for row in in_doubt if (found := place(appraisal, row)) is not None)
+        re_gauge=tuple(found for row in deciding if (found := place(appraisal, row)) is not None)
         if re_gauge
         else (),
         re_gauge_by=_re_gauge_by(appraisal, holds, i) if re_gauge else None,
         last_internal_on=None if bench.seen.no_internal[i] else _date(bench.seen.internal_day, i),
         last_external_on=None if bench.seen.no_external[i] else _date(bench.seen.external_day, i),
+        written={
+            name: text
+            for name in ("nameplate_mawp", "current_mawp", "operating_pressure")
+            if (text := str(getattr(vessels, f"{name}_written")[i]))
+        },
         rules_status=rule_status(str(vessels.rules[i])),
     )
 
@@ -324,6 +330,7 @@ def _relief(appraisal: Appraisal, i: int, today: float | None) -> tuple[ReliefVi
             if row == lowest and today is not None and float(table.set_pressure_mpa[row]) > today * (1 + 1e-9)
             else None,
             reset_by_on=_date(appraisal.relief_day, row),
+            written=str(table.written[row]),
         )
         for row in rows
     )
@@ -347,6 +354,7 @@ def _ways_out(
 
 
 def _re_gauge_by(appraisal: Appraisal, holds: date | None, i: int) -> date | None:
-    """Give the day to which the rating holds by the governing rate, or the as-of date where that is past."""
-    day = holds or _date(appraisal.judged.carry.day, i)
-    return None if day is None else max(day, appraisal.as_of)
+    """Give the earlier of the day to which the rating holds and the carry-to date; the as-of date where past."""
+    carry = _date(appraisal.judged.carry.day, i)
+    days = [day for day in (holds, carry) if day is not None]
+    return max(min(days), appraisal.as_of) if days else None

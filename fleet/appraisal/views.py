@@ -42,6 +42,8 @@ class ReliefView:
     set_pressure_mpa: float
     now: str | None
     reset_by_on: date | None
+    written: str = ""
+    """The setting as somebody wrote it, with its unit."""
 
     def as_json(self) -> dict[str, Any]:
         """Give the object as the contract has it."""
@@ -225,6 +227,8 @@ class VesselView:
     re_gauge_by: date | None
     last_internal_on: date | None
     last_external_on: date | None
+    written: dict[str, str] = field(default_factory=dict)
+    """Pressures as somebody wrote them, by column: nameplate_mawp, current_mawp, operating_pressure."""
     rules_status: str = ""
     """How well the values of its rule set are known, such as `secondary`."""
     sentence: str = field(default="")

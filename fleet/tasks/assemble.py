@@ -23,7 +23,7 @@ from fleet.appraisal.inputs import (
 )
 from fleet.store import models
 from fleet.tasks import settings as levels
-from fleet.tasks.columns import Index, Tree, by_day, chain, count, days, pick, same
+from fleet.tasks.columns import Index, Tree, as_written, by_day, chain, count, days, pick, same
 from fleet.tasks.reader import Columns, Reader
 from fleet.tasks.record import (
     decisions_of,
@@ -110,10 +110,12 @@ def _vessels(as_of: date, tree: Tree, states: Columns, decisions: Columns) -> Ve
     state, undated = state_of(states, tree.vessel)
     current = np.full(count, np.nan)
     basis = np.full(count, "", dtype=np.object_)
+    written = np.full(count, "", dtype=np.object_)
     for row in re_ratings(decisions, as_of):
         place = tree.vessel.get(decisions["vessel_id"][row])
         if place is not None:
             current[place] = decisions["pressure_mpa"][row]
+            written[place] = as_written(decisions["written"][row], "pressure")
             basis[place] = decisions["reason"][row] or ""
     return Vessels.of(
         count,
@@ -124,6 +126,9 @@ def _vessels(as_of: date, tree: Tree, states: Columns, decisions: Columns) -> Ve
         next_survey_day=days(columns["next_survey_on"]),
         current_mawp_mpa=current,
         current_mawp_basis=basis,
+        nameplate_mawp_written=[as_written(each, "nameplate_mawp") for each in columns["written"]],
+        current_mawp_written=written,
+        operating_pressure_written=[as_written(each, "operating_pressure") for each in columns["written"]],
     )
 
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import json
 from collections.abc import Iterable
 from dataclasses import dataclass
 from datetime import date
@@ -135,6 +136,30 @@ def days(values: Iterable[date | None]) -> Floats:
     [2.0, nan]
     """
     return np.array([np.nan if day is None else day.toordinal() for day in values], dtype=np.float64)
+
+
+def as_written(written: object, column: str) -> str:
+    """Give a value as somebody wrote it.
+
+    Parameters
+    ----------
+    written : object
+        What the fact keeps: JSON text, a mapping, or None [-].
+    column : str
+        Name of the column [text].
+
+    Returns
+    -------
+    str
+        Value and unit as written, empty where nothing was kept.
+
+    Examples
+    --------
+    >>> as_written('{"set_pressure": "261 psi"}', "set_pressure")
+    '261 psi'
+    """
+    found = json.loads(written) if isinstance(written, str) else written
+    return str(found.get(column, "")) if isinstance(found, dict) else ""
 
 
 def same(columns: Columns, table: type[Any]) -> dict[str, Any]:

@@ -25,6 +25,7 @@ from fleet.tasks import settings as levels
 from fleet.tasks.columns import (
     Index,
     Tree,
+    as_written,
     by_day,
     chain,
     count,
@@ -317,6 +318,7 @@ def fetch_relief(record: Reader, tree: Tree) -> Relief:
         vessel=vessel[order],
         device=[device[row] for row in order],
         set_pressure_mpa=[columns["set_pressure_mpa"][row] for row in order],
+        written=[as_written(columns["written"][row], "set_pressure") for row in order],
     )
 
 
