@@ -119,7 +119,11 @@ class Formula:
             for name, each in values.items()
         }
         with np.errstate(all="ignore"):
-            return np.asarray(self.function(**arrays), dtype=np.float64)
+            result = np.asarray(self.function(**arrays), dtype=np.float64)
+        unknown = np.zeros(1, dtype=np.bool_)
+        for each in arrays.values():
+            unknown = unknown | np.isnan(each)
+        return np.where(unknown, np.nan, result) if unknown.any() else result
 
     def _known(self, values: Mapping[str, Num]) -> dict[str, Num]:
         """Give the values, and the result too where a limit speaks of it."""

@@ -8,10 +8,10 @@ from fleet import formula
 from fleet.appraisal.views import PartView, VesselView
 
 GIVEN: dict[str, str] = {
-    "structural": "structural_minimum of the register",
-    "external": "required_thickness_external of the register",
-    "axial load": "required_thickness_axial of the register",
-    "given": "required_thickness_given of the register",
+    "structural": "structural_minimum as given on the register",
+    "external": "required_thickness_external as given on the register",
+    "axial load": "required_thickness_axial as given on the register",
+    "given": "required_thickness_given as given on the register",
 }
 """What a required thickness rests on where no formula sets it [text]."""
 

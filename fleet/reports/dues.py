@@ -8,6 +8,9 @@ from datetime import date
 from fleet.appraisal.views import VesselView
 from fleet.words import RETIRED
 
+DUE_ORDER = "Overdue first, then by the earlier of the two dates; what has neither date stands last."
+"""In which order vessels stand on the list of what is due [text]."""
+
 
 def overdue_kinds(view: VesselView) -> list[str]:
     """Say which inspections of a vessel were due before the as-of date.

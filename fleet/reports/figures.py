@@ -88,6 +88,32 @@ class Figures:
         unit = self.unit(quantity)
         return f"{figure} {'year' if unit == 'years' and figure.value == 1 else unit}"
 
+    def as_written(self, written: str, quantity: str) -> str:
+        """Give what a person wrote, to stand in brackets beside a figure in another unit.
+
+        Parameters
+        ----------
+        written : str
+            The number with its unit, as written; empty if that is not known [text].
+        quantity : str
+            Its quantity [text].
+
+        Returns
+        -------
+        str
+            Empty where nothing was written, or the figure beside it bears the same unit.
+
+        Examples
+        --------
+        >>> Figures(units.SI).as_written("261 psi", "pressure"), Figures(units.US).as_written("261 psig", "pressure")
+        ('written 261 psi', '')
+        """
+        if not written:
+            return ""
+        known = units.SPELLINGS[quantity]
+        wrote, prints = written.rpartition(" ")[2], self.unit(quantity)
+        return "" if known.get(wrote, wrote) == known.get(prints, prints) else f"written {written}"
+
     def wall(self, value: float | None) -> Figure:
         """Print metal that is there: rounded down.
 

@@ -7,27 +7,8 @@ from collections.abc import Callable
 from fleet import words
 from fleet.appraisal.views import LocationView, Place, VesselView
 from fleet.reports.figures import Figures
+from fleet.reports.known import DENYING
 from fleet.reports.source import located
-
-DENYING = frozenset(
-    (
-        "vacuum not assessed",
-        "part without location",
-        "part never measured",
-        "no echo at last visit",
-        "part not read at last visit",
-        "missing datum",
-        "no formula",
-        "outside formula limits",
-        "no given thickness",
-        "other part below given thickness",
-        "lining not told",
-        "lining thickness blank",
-        "no rate",
-        "no part",
-    )
-)
-"""Codes of gaps that can deny a verdict [text]."""
 
 
 def why(view: VesselView, figures: Figures) -> str:

@@ -3,32 +3,17 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from datetime import date
 
 from fleet import words
-from fleet.appraisal.views import ReliefView, VesselView
+from fleet.appraisal.views import VesselView
 from fleet.reports.figures import Figures
 from fleet.reports.reason import telling_place
+from fleet.reports.sentences import BELOW, Sentence, device_words, relief_sentences
 from fleet.reports.source import AppraisalLike, reconciled
 
 NAMED = 6
 """How many tags a sentence names before it counts the rest."""
-
-
-@dataclass(frozen=True)
-class Sentence:
-    """One sentence of the story.
-
-    Parameters
-    ----------
-    text : str
-        The sentence [text].
-    relief_above_today : bool
-        Whether it says that a relief device is set above what the wall carries today [-].
-    """
-
-    text: str
-    relief_above_today: bool = False
 
 
 def story(appraisal: AppraisalLike, figures: Figures) -> tuple[Sentence, ...]:
@@ -92,106 +77,6 @@ def the_sum(sorted_in: dict[str, list[VesselView]]) -> str:
         return "The register holds no vessel."
     terms = " + ".join(f"{len(members)} {block}" for block, members in sorted_in.items() if members)
     return f"The register holds {_count(total)}: {terms} = {total}."
-
-
-def relief_sentences(view: VesselView, figures: Figures) -> tuple[Sentence, ...]:
-    """Say of each relief device of a vessel how it stands to the wall, now and later.
-
-    Parameters
-    ----------
-    view : VesselView
-        The vessel [-].
-    figures : Figures
-        How figures are printed [-].
-
-    Returns
-    -------
-    tuple of Sentence
-        First what is set above what the wall carries today, then what must be reset by a date.
-    """
-    said = [
-        Sentence(
-            f"{_device(device, figures)} is {device.now}, {_carries(view, figures)}.", relief_above_today=True
-        )
-        for device in view.relief
-        if device.now
-    ]
-    said += [
-        Sentence(f"{_device(device, figures)} is to be {words.RESET_BY} {device.reset_by_on.isoformat()}.")
-        for device in view.relief
-        if device.reset_by_on and not device.now
-    ]
-    return tuple(said)
-
-
-def operating_sentence(view: VesselView, figures: Figures) -> str:
-    """Say how the operating pressure stands to the wall.
-
-    Parameters
-    ----------
-    view : VesselView
-        The vessel [-].
-    figures : Figures
-        How figures are printed [-].
-
-    Returns
-    -------
-    str
-        Empty where there is nothing to say.
-    """
-    if view.operating_pressure_mpa is None:
-        return ""
-    pressure = figures.with_unit(figures.asked(view.operating_pressure_mpa), "pressure")
-    if view.operating_above_today:
-        return f"It operates at {pressure}, above what the wall carries today, {_carries(view, figures)}."
-    if view.operating_until is not None:
-        return (
-            f"The wall carries its operating pressure of {pressure} until {view.operating_until.isoformat()}."
-        )
-    return ""
-
-
-def plateau_sentence(view: VesselView, figures: Figures) -> str:
-    """Say, on the short-life plateau, what the clause allows and how far the rating holds.
-
-    Parameters
-    ----------
-    view : VesselView
-        The vessel [-].
-    figures : Figures
-        How figures are printed [-].
-
-    Returns
-    -------
-    str
-        Empty where the short-life rule does not govern.
-    """
-    if view.clause_interval_years is None or view.half_life_on_plateau_years is None:
-        return ""
-    if not view.clause_interval_years > 0:
-        return ""
-    allowed, half = figures.years(view.clause_interval_years), figures.years(view.half_life_on_plateau_years)
-    return (
-        f"The clause allows an interval of {figures.with_unit(allowed, 'years')}; "
-        f"with twice the loss the rating holds only to half life, {figures.with_unit(half, 'years')}."
-    )
-
-
-def measured_words(view: VesselView) -> str:
-    """Say how many parts the figures rest on.
-
-    Parameters
-    ----------
-    view : VesselView
-        The vessel [-].
-
-    Returns
-    -------
-    str
-        Headed ``measured parts only`` where some part was never measured, or lacks what its figures need.
-    """
-    count = f"{view.parts_known} of {view.parts_total}"
-    return count if view.parts_known >= view.parts_total else f"measured parts only: {count}"
 
 
 def _opening(appraisal: AppraisalLike, serving: Sequence[VesselView]) -> str:
@@ -278,7 +163,7 @@ def _later(
             f"on {first.retirement_on}, at {first.governing_life}: {_tags(running)}."
         )
     soon = [
-        (device.reset_by_on, f"{_device(device, figures)} on {view.vessel} by {device.reset_by_on}")
+        (device.reset_by_on, f"{device_words(device, figures)} on {_reset(view, device.reset_by_on)}")
         for view in serving
         for device in view.relief
         if device.reset_by_on and not device.now and device.reset_by_on <= appraisal.list_end_on
@@ -297,6 +182,16 @@ def _later(
             f"{_count(len(overdue))} {'is' if len(overdue) == 1 else 'are'} overdue: {_tags(overdue)}."
         )
     return told
+
+
+def _reset(view: VesselView, day: date) -> str:
+    """Say by when a device is to be reset, and that this speaks of pressure alone where the wall is short already."""
+    said = f"{view.vessel} by {day.isoformat()}"
+    return (
+        f"{said}, by pressure alone, for its wall is below what is required"
+        if view.standing in BELOW
+        else said
+    )
 
 
 def _aside(sorted_in: dict[str, list[VesselView]]) -> list[str]:
@@ -323,17 +218,6 @@ def _open_points(views: Sequence[VesselView]) -> str:
         f"{doubts} doubt{_s(doubts)} and {gaps} gap{_s(gaps)} stand open; none of them improves a figure. "
         "Each is listed with what to do about it."
     )
-
-
-def _device(device: ReliefView, figures: Figures) -> str:
-    pressure = figures.with_unit(figures.asked(device.set_pressure_mpa), "pressure")
-    return f"{device.device} ({pressure})"
-
-
-def _carries(view: VesselView, figures: Figures) -> str:
-    if view.mawp_today_mpa is None:
-        return "which is not known"
-    return figures.with_unit(figures.carries(view.mawp_today_mpa), "pressure")
 
 
 def _places(members: Sequence[VesselView]) -> str:

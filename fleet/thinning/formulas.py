@@ -182,7 +182,7 @@ def remaining_life(*, t: Num, t_r: Num, C: Num) -> Num:
     >>> remaining_life(t=9.0, t_r=10.0, C=0.25)
     0.0
     """
-    return where(t > t_r, (t - t_r) / C, 0 * C)
+    return maximum(t - t_r, 0) / C
 
 
 @formula(
@@ -221,7 +221,7 @@ def life_interval(*, RL: Num, f: Num, a: Num, b: Num) -> Num:
     >>> [life_interval(RL=life, f=0.5, a=4.0, b=2.0) for life in (12.0, 4.0, 3.0, 1.5)]
     [6.0, 2.0, 2.0, 1.5]
     """
-    return where(a > RL, minimum(RL, b), f * RL)
+    return where(RL < a, minimum(RL, b), f * RL)
 
 
 @formula(

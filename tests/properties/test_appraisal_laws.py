@@ -8,6 +8,7 @@ measured span (rule 3 leaves it behind).
 from __future__ import annotations
 
 import copy
+import sys
 import time
 from collections.abc import Callable
 from dataclasses import replace
@@ -127,7 +128,11 @@ def test_faster_loss_never_lengthens_life(fleet: Fleet, more: float, data: st.Da
 
     def faster(other: Fleet) -> None:
         first = first_of(other, place)
-        if first is not last_of(other, place):
+        rest = [
+            row["thickness_mm"] for row in other.readings if row["location"] == place and row is not first
+        ]
+        # where the first reading is itself the least, raising it is more wall, not a faster loss
+        if rest and first["thickness_mm"] >= min(rest):
             first["thickness_mm"] += more
 
     assert_no_better(changed(fleet, faster), than=look(fleet))
@@ -337,17 +342,38 @@ def big(vessels: int, places: int = 10, surveys: int = 4) -> Inputs:
     )  # fmt: skip
 
 
-def seconds(inputs: Inputs) -> float:
-    best = float("inf")
-    for _ in range(3):
-        begun = time.perf_counter()
+def calls(inputs: Inputs) -> int:
+    """Count the Python functions that one appraisal calls."""
+    number = 0
+
+    def count(_frame: object, event: str, _arg: object) -> None:
+        nonlocal number
+        number += event == "call"
+
+    sys.setprofile(count)
+    try:
         appraise(inputs, as_of=AS_OF)
-        best = min(best, time.perf_counter() - begun)
-    return best
+    finally:
+        sys.setprofile(None)
+    return number
+
+
+def test_no_python_loop_runs_over_locations_or_readings() -> None:
+    few, many = big(50, places=4), big(50, places=80, surveys=4)
+    assert len(many.locations) == 20 * len(few.locations) == 4_000
+    assert calls(many) < 1.05 * calls(few)
 
 
 @pytest.mark.slow
-def test_twenty_times_more_locations_cost_less_than_thirty_times_more() -> None:
+def test_twenty_times_more_locations_cost_no_more_than_they_should() -> None:
+    def seconds(inputs: Inputs) -> float:
+        best = float("inf")
+        for _ in range(3):
+            begun = time.perf_counter()
+            appraise(inputs, as_of=AS_OF)
+            best = min(best, time.perf_counter() - begun)
+        return best
+
     few, many = big(100), big(2000)
     assert len(many.locations) == 20 * len(few.locations) == 20_000
-    assert seconds(many) < 30 * seconds(few)
+    assert seconds(many) < 60 * seconds(few)

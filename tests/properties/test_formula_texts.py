@@ -16,7 +16,8 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-import fleet.mechanics  # noqa: F401  # enters the formulas
+import fleet.mechanics  # enters the formulas
+import fleet.thinning.formulas  # noqa: F401  # these too
 from fleet.formula import REGISTER, Formula, Num, formula, writing
 
 _SHEET_FUNCTIONS: dict[str, Callable[..., float]] = {
@@ -82,6 +83,8 @@ class Reader:
             return math.sqrt(self.climb(2 * 5))
         if first == "(":
             value = self.climb(0)
+            if self.sign == "if":
+                value = self.chosen(value)
             assert self.take() == ")"
             return value
         if first in self.functions:
@@ -95,6 +98,14 @@ class Reader:
         if first in self.values:
             return self.values[first]
         return float(first)
+
+    def chosen(self, value: float) -> float:
+        """Read on from ``value`` in ``(value if condition, else other)``."""
+        assert self.take() == "if"
+        truth = self.climb(0)
+        assert (self.take(), self.take()) == (",", "else")
+        other = self.climb(0)
+        return value if truth else other
 
     @staticmethod
     def worked(sign: str, left: float, right: float) -> float:
@@ -233,7 +244,7 @@ def test_every_limit_names_what_takes_over_and_every_argument_has_its_unit() -> 
 
     for known in REGISTER.values():
         assert set(known.units) == set(known.arguments), known.name
-        assert known.unit in {"MPa", "mm", "-", "MPa/mm"}, known.name
+        assert known.unit in {"MPa", "mm", "-", "MPa/mm", "mm/year", "year"}, known.name
         for limit in known.limits:
             if limit.kind == "proportion":
                 assert limit.then in DOUBTS, known.name

@@ -7,8 +7,9 @@ from datetime import date
 
 from fleet import units, words
 from fleet.appraisal.views import VesselView
-from fleet.reports.dues import in_due_order, overdue_kinds
+from fleet.reports.dues import DUE_ORDER, in_due_order, overdue_kinds
 from fleet.reports.figures import NONE, Figures
+from fleet.reports.known import KNOWN_ONLY, speaks_for
 from fleet.reports.source import AppraisalLike, blocks
 from fleet.reports.story import story, the_sum
 from fleet.reports.text.layout import Head, paragraph, strokes, table, title
@@ -110,7 +111,7 @@ def derating(appraisal: AppraisalLike, written_to: str, display: units.Display =
 
 
 def due(appraisal: AppraisalLike, until: date | None = None) -> str:
-    """Write what is to be inspected when: overdue first, then by date.
+    """Write what is to be inspected when: overdue first, then by the earlier of the two dates.
 
     Parameters
     ----------
@@ -149,6 +150,7 @@ def due(appraisal: AppraisalLike, until: date | None = None) -> str:
         for view in listed
     ]
     lines = [*title("What is due", f"as of {appraisal.as_of.isoformat()}"), *paragraph(words.CAUTION), ""]
+    lines += [*paragraph(DUE_ORDER), ""]
     lines += table(heads, rows, marks=[view.standing for view in listed]) if rows else ["     none"]
     lines += ["", *paragraph(_due_sum(len(views), listed, left_out, retired, until))]
     return _page([*lines, f"Journal head {appraisal.journal_head}"])
@@ -192,7 +194,8 @@ def _blocks(views: Iterable[VesselView], figures: Figures) -> list[str]:
     sorted_in = blocks(views)
     every_row = [_row(view, figures) for members in sorted_in.values() for view in members]
     for block, members in sorted_in.items():
-        lines.append(f"{block}: {len(members) or 'none'}")
+        aside = f"   {KNOWN_ONLY}" if members and block == words.NO_VERDICT else ""
+        lines.append(f"{block}: {len(members) or 'none'}{aside}")
         if members:
             rows = [_row(view, figures) for view in members]
             marks = [view.standing for view in members]
@@ -227,8 +230,14 @@ def _row(view: VesselView, figures: Figures) -> list[str]:
         "" if view.governing_pressure is None else str(view.governing_pressure),
         str(figures.years(view.life_left_years)),
         _day(view.retirement_on),
-        ", ".join(view.flags),
+        ", ".join((*view.flags, *_partly(view))),
     ]
+
+
+def _partly(view: VesselView) -> list[str]:
+    """Say beside the flags for what the figures of the row speak, where that is not the whole vessel."""
+    said = speaks_for(view)
+    return [said] if said else []
 
 
 def _governed_by(view: VesselView) -> str:

@@ -5,12 +5,19 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 from fleet import units, words
-from fleet.appraisal.views import LocationView, PartView, Place, VesselView
-from fleet.reports import cite
+from fleet.appraisal.views import Place, VesselView, WaysOut
 from fleet.reports.figures import NONE, Figures
+from fleet.reports.known import NOT_ASSESSED, capital, known_only, speaks_for
 from fleet.reports.reason import why
-from fleet.reports.story import measured_words, operating_sentence, plateau_sentence, relief_sentences
+from fleet.reports.sentences import (
+    interval_words,
+    operating_sentence,
+    plateau_sentence,
+    quiet_relief,
+    relief_sentences,
+)
 from fleet.reports.text.layout import Head, marked, paragraph, table, title
+from fleet.reports.text.parts import parts_and_locations
 from fleet.words import Notice
 
 
@@ -30,18 +37,19 @@ def show(view: VesselView, display: units.Display = units.SI) -> str:
         Lines of 100 columns, ending in a line break.
     """
     figures = Figures(display)
+    partly = speaks_for(view)
     lines = [
         *title(f"{view.vessel}   {view.service}".rstrip(), f"as of {view.as_of.isoformat()}"),
         *paragraph(words.CAUTION),
         "",
         *_answer(view, figures),
         "",
-        *_headed("Pressure", _pressures(view, figures)),
-        *_headed("Life and dates", _dates(view, figures)),
+        *_headed("Pressure", _pressures(view, figures), partly),
+        *_headed("Life and dates", _dates(view, figures), partly),
         *_headed("Relief and operation", _relief(view, figures)),
         *_headed("Ways out", _ways_out(view, figures)),
         *_headed("Gauge again", _re_gauge(view)),
-        *_parts(view, figures),
+        *parts_and_locations(view, figures),
         *_headed("Doubts", _notices(view.doubts)),
         *_headed("Gaps", _notices(view.gaps)),
         f"Journal head {view.journal_head}",
@@ -50,27 +58,43 @@ def show(view: VesselView, display: units.Display = units.SI) -> str:
 
 
 def _answer(view: VesselView, figures: Figures) -> list[str]:
-    lines = marked(view.standing, f"{view.standing}: {why(view, figures)}")
-    beside = [f"{flag}" for flag in view.flags]
-    if view.block not in {view.standing, *view.flags}:
+    if view.block == words.RETIRED:
+        lines = paragraph(f"{words.RETIRED}: kept on the register so that the list adds up.", indent=5)
+        lines += marked(view.standing, f"By its last figures {view.standing}: {why(view, figures)}")
+    else:
+        lines = marked(view.standing, f"{view.standing}: {why(view, figures)}")
+    beside = list(view.flags)
+    if view.block not in {view.standing, words.RETIRED, *view.flags}:
         beside.append(view.block)
     if beside:
         lines += paragraph(f"Beside it: {', '.join(beside)}.", indent=5)
-    measured = measured_words(view)
-    if view.parts_known < view.parts_total:
-        lines += paragraph(f"{measured[0].upper()}{measured[1:]}.", indent=5)
+    partly = speaks_for(view)
+    if partly:
+        said = (
+            "The figures below leave out what was not assessed" if partly == NOT_ASSESSED else capital(partly)
+        )
+        lines += paragraph(f"{said}.", indent=5)
     return lines
 
 
-def _headed(heading: str, lines: list[str]) -> list[str]:
-    return [heading, *lines, ""] if lines else []
+def _headed(heading: str, lines: list[str], partly: str = "") -> list[str]:
+    """Set lines beneath their heading; beside it stands for what they speak, where that is not the whole vessel."""
+    return [f"{heading}   {partly}".rstrip(), *lines, ""] if lines else []
 
 
 def _pressures(view: VesselView, figures: Figures) -> list[str]:
     unit = figures.unit("pressure")
     rows = [
-        [f"nameplate MAWP [{unit}]", str(figures.carries(view.nameplate_mawp_mpa)), ""],
-        [f"current MAWP [{unit}]", str(figures.carries(view.current_mawp_mpa)), ""],
+        [
+            f"nameplate MAWP [{unit}]",
+            str(figures.carries(view.nameplate_mawp_mpa)),
+            _written(view, "nameplate_mawp", figures),
+        ],
+        [
+            f"current MAWP [{unit}]",
+            str(figures.carries(view.current_mawp_mpa)),
+            _written(view, "current_mawp", figures),
+        ],
         [f"MAWP today [{unit}]", str(figures.carries(view.mawp_today_mpa)), "by the wall on the as-of date"],
         [f"projected MAWP [{unit}]", str(figures.carries(view.projected_mawp_mpa)), _carried(view)],
     ]
@@ -83,6 +107,11 @@ def _pressures(view: VesselView, figures: Figures) -> list[str]:
             ["  at the end of the list", at_end, f"on {view.list_end_on.isoformat()}; carries no standing"]
         )
     return table([Head(""), Head("", right=True), Head("", wraps=True)], rows)[1:]
+
+
+def _written(view: VesselView, column: str, figures: Figures) -> str:
+    written = figures.as_written(view.written.get(column, ""), "pressure")
+    return f"({written})" if written else ""
 
 
 def _carried(view: VesselView) -> str:
@@ -106,6 +135,12 @@ def _dates(view: VesselView, figures: Figures) -> list[str]:
         ["external due", _day(view.external_due_on), _last(view.last_external_on)],
         ["current MAWP holds until", _day(view.rating_holds_until), ""],
     ]
+    if speaks_for(view):
+        rows[-1] = [
+            "what is known suffices until",
+            rows[-1][1],
+            "for the current MAWP; of the rest it says nothing",
+        ]
     lines = table([Head(""), Head("", right=True), Head("", wraps=True)], rows)[1:]
     plateau = plateau_sentence(view, figures)
     said = [plateau] if plateau else []
@@ -114,22 +149,12 @@ def _dates(view: VesselView, figures: Figures) -> list[str]:
 
 
 def _due_by(view: VesselView, figures: Figures) -> str:
-    said = [_last(view.last_internal_on)]
-    if view.internal_interval_years is not None:
-        said.append(f"interval {figures.with_unit(figures.years(view.internal_interval_years), 'years')}")
-    if view.internal_due_on is not None:
-        said.append(_by(view.governing_due) if view.governing_due else "the cap of the rule set governs")
-    return ", ".join(said)
+    return ", ".join(text for text in (_last(view.last_internal_on), interval_words(view, figures)) if text)
 
 
 def _relief(view: VesselView, figures: Figures) -> list[str]:
     said = [sentence.text for sentence in relief_sentences(view, figures)]
-    quiet = [device for device in view.relief if not device.now and not device.reset_by_on]
-    said += [
-        f"{device.device} ({figures.with_unit(figures.asked(device.set_pressure_mpa), 'pressure')}) "
-        "is set no higher than what the wall carries."
-        for device in quiet
-    ]
+    said += quiet_relief(view, figures)
     if not view.relief:
         said.append("No relief device is linked to this vessel.")
     operating = operating_sentence(view, figures)
@@ -139,25 +164,54 @@ def _relief(view: VesselView, figures: Figures) -> list[str]:
 
 def _ways_out(view: VesselView, figures: Figures) -> list[str]:
     ways = view.ways_out
-    if ways is None:
+    if ways is None or view.block == words.RETIRED:
         return []
+    said = _of_known_parts(view, ways, figures) if known_only(view) else _of_all_parts(view, ways, figures)
+    return [line for text in said for line in paragraph(text, indent=5)]
+
+
+def _of_all_parts(view: VesselView, ways: WaysOut, figures: Figures) -> list[str]:
     said = []
     until, renew = ways.rating_holds_until, ways.renew_by
     if until is not None and until < view.as_of:
-        said.append(f"With twice the loss the current MAWP has not held since {until.isoformat()}.")
+        said.append(f"With twice the loss the current MAWP has not held since {until}.")
     elif until is not None:
-        said.append(f"Look again by {until.isoformat()}: to that day the current MAWP holds.")
+        said.append(f"Look again by {until}: to that day the current MAWP holds.")
+    lower = _lower_pressure(view, ways, figures)
+    said += [f"{capital(lower)}."] if lower else []
+    if renew is not None and renew < view.as_of:
+        said.append(f"Repair or renewal has been due since {renew}.")
+    elif renew is not None:
+        said.append(f"Repair or renew by {renew}.")
+    return said
+
+
+def _of_known_parts(view: VesselView, ways: WaysOut, figures: Figures) -> list[str]:
+    """Say what is known, and claim nothing of the rest: least of all that the rating holds."""
+    said, told = [], []
+    until, renew = ways.rating_holds_until, ways.renew_by
+    if view.standing == words.NO_VERDICT:
+        said.append("Measure or record first what is missing (see the gaps); until then there is no verdict.")
+    if until is not None:
+        past = f"with twice the loss the current MAWP has not held since {until}"
+        told.append(past if until < view.as_of else f"the wall suffices for the current MAWP to {until}")
+    lower = _lower_pressure(view, ways, figures)
+    if lower and not (view.standing == words.NO_VERDICT and ways.pressure_that_reaches_mpa is None):
+        told.append(lower)
+    if renew is not None:
+        told.append(f"repair or renewal {'due since' if renew < view.as_of else 'by'} {renew}")
+    return [*said, f"{capital(known_only(view))}: {'; '.join(told)}."] if told else said
+
+
+def _lower_pressure(view: VesselView, ways: WaysOut, figures: Figures) -> str:
+    """Say which lower pressure reaches the carry-to date; empty where none is needed."""
     reaches, current = ways.pressure_that_reaches_mpa, view.current_mawp_mpa
     if reaches is None or view.carry_to_on is None:
-        said.append("No lower pressure reaches the carry-to date, or none can be had.")
-    elif current is None or reaches < current:
-        pressure = figures.with_unit(figures.carries(reaches), "pressure")
-        said.append(f"Re-rate to {pressure}: the wall carries that to {view.carry_to_on.isoformat()}.")
-    if renew is not None and renew < view.as_of:
-        said.append(f"Repair or renewal has been due since {renew.isoformat()}.")
-    elif renew is not None:
-        said.append(f"Repair or renew by {renew.isoformat()}.")
-    return [line for text in said for line in paragraph(text, indent=5)]
+        return "no lower pressure reaches the carry-to date, or none can be had"
+    if current is not None and reaches >= current:
+        return ""
+    pressure = figures.with_unit(figures.carries(reaches), "pressure")
+    return f"re-rate to {pressure}: the wall carries that to {view.carry_to_on}"
 
 
 def _re_gauge(view: VesselView) -> list[str]:
@@ -166,67 +220,6 @@ def _re_gauge(view: VesselView) -> list[str]:
     by = f" by {view.re_gauge_by.isoformat()}" if view.re_gauge_by else ""
     places = "; ".join(str(place) for place in view.re_gauge)
     return paragraph(f"{places}{by}.", indent=5)
-
-
-def _parts(view: VesselView, figures: Figures) -> list[str]:
-    lines = [f"Parts and locations   thickness [{figures.unit('length')}], rates [{figures.unit('rate')}]"]
-    if not view.parts:
-        return [*lines, "     No part is on the register.", ""]
-    for part in view.parts:
-        lines += ["", *paragraph(_part_line(part, figures), indent=5, hanging=2)]
-        lines += _locations(part.locations, figures)
-    return [*lines, ""]
-
-
-def _part_line(part: PartView, figures: Figures) -> str:
-    required = figures.with_unit(figures.needed(part.required_thickness_mm), "length")
-    said = f"{part.part}, {part.shape}: required {required}"
-    rests_on = cite.required_rests_on(part, part.required_by)
-    said += f" set by {part.required_by}" if part.required_by else ""
-    said += f", {rests_on}" if rests_on else ""
-    today = figures.with_unit(figures.carries(part.mawp_today_mpa), "pressure")
-    then = figures.with_unit(figures.carries(part.projected_mawp_mpa), "pressure")
-    said += f"; MAWP today {today}, projected {then}"
-    return said if part.measured else f"{said}; never measured"
-
-
-def _locations(locations: Sequence[LocationView], figures: Figures) -> list[str]:
-    if not locations:
-        return ["     no location laid out"]
-    heads = [
-        Head("location", wraps=True),
-        Head("obs", right=True),
-        Head("last on"),
-        Head("wall\nused", right=True),
-        Head("long\nterm", right=True),
-        Head("short\nterm", right=True),
-        Head("plan-\nning", right=True),
-        Head("basis", wraps=True),
-        Head("re-\nquired", right=True),
-        Head("pro-\njected", right=True),
-        Head("retires on"),
-    ]
-    rows = [
-        [
-            place.location,
-            str(place.observations),
-            _day(place.last_on),
-            str(figures.wall(place.wall_used_mm)),
-            str(figures.rate(place.long_term_rate_mm_per_year)),
-            str(figures.rate(place.short_term_rate_mm_per_year)),
-            str(figures.rate(place.planning_rate_mm_per_year)),
-            place.rate_basis,
-            str(figures.needed(place.required_thickness_mm)),
-            str(figures.wall(place.projected_thickness_mm)),
-            _day(place.retirement_on),
-        ]
-        for place in locations
-    ]
-    lines = table(heads, rows, gap=1)
-    for place in locations:
-        if place.standing in words.STANDINGS and place.standing != words.RATING_HELD:
-            lines += marked(place.standing, f"{place.location}: {place.standing}")
-    return lines
 
 
 def _notices(notices: Sequence[Notice]) -> list[str]:

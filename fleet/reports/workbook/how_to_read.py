@@ -81,8 +81,38 @@ WORDS: tuple[tuple[str, str], ...] = (
         ),
     ),
     (
-        "measured parts only",
-        "some part was never measured; the figures speak for the others",
+        "measured parts only, known parts only",
+        (
+            "some part was never measured, or lacks what its figures need; the figures speak for the others. Where "
+            "every part was measured and something else is missing they stand 'without what was not assessed'"
+        ),
+    ),
+    (
+        "set by",
+        (
+            "hoop, axial, end: by pressure, in that direction of stress. structural, external, axial load, given: "
+            "by a minimum as given on the register (structural_minimum, required_thickness_external, "
+            "required_thickness_axial, required_thickness_given); it is not worked out here and no lower pressure "
+            "makes it smaller"
+        ),
+    ),
+    (
+        "by pressure alone",
+        (
+            "said where the wall is below what is required, or comes down to a minimum that is no matter of "
+            "pressure: the sentence speaks of the pressure and not of the wall"
+        ),
+    ),
+    (
+        "written",
+        "a pressure as somebody wrote it, beside the same pressure in the unit printed",
+    ),
+    (
+        "filter and sort",
+        (
+            "The list may be filtered but not sorted: its blocks have headings of their own, which sorting would "
+            "part from their vessels"
+        ),
     ),
     (
         "status of a clause",
@@ -93,6 +123,9 @@ WORDS: tuple[tuple[str, str], ...] = (
     ),
 )
 """The words of the list, in plain English [text]."""
+
+NO_CLAUSE = "no clause: a choice of this project"
+"""What stands in place of a clause where there is none [text]."""
 
 ROUNDING = (
     "Each figure is worked out unrounded and rounded once, in the unit printed, to the safe side: what is "
@@ -135,18 +168,47 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
     _section(page, "Rounding", [("to the safe side", ROUNDING)])
     _formulas(page, cite.formulas_of(appraisal.views()))
     _rules(page, grounds)
-    _section(page, "Settings", grounds.settings)
+    _section(page, "Settings", [(what, counted(says)) for what, says in grounds.settings])
     record = [
         ("as of", appraisal.as_of.isoformat()),
         ("the list ends on", appraisal.list_end_on.isoformat()),
         ("journal entry", str(appraisal.journal_no)),
         ("journal head", appraisal.journal_head),
+        (
+            "which head that is",
+            "the head of the record from which this list was read; what is recorded later has another",
+        ),
         ("units", figures.display.name),
         ("program version", grounds.program_version or "not told"),
         ("this file", "drawn from the record; writing it again from the same record gives the same bytes"),
     ]
     _section(page, "The record", record)
     page.finish()
+
+
+def counted(amount: str) -> str:
+    """Put the unit of a span of time into singular or plural.
+
+    Parameters
+    ----------
+    amount : str
+        A number and its unit [text].
+
+    Returns
+    -------
+    str
+        As it was, where the unit is none of time.
+
+    Examples
+    --------
+    >>> counted("1 years"), counted("10 year"), counted("0.5 year"), counted("0.25 mm")
+    ('1 year', '10 years', '0.5 years', '0.25 mm')
+    """
+    number, _, unit = amount.partition(" ")
+    one = unit.removesuffix("s")
+    if one not in {"day", "month", "year"}:
+        return amount
+    return f"{number} {one}" if number == "1" else f"{number} {one}s"
 
 
 def _standings(page: Page) -> None:
@@ -190,7 +252,8 @@ def _rules(page: Page, grounds: Grounds) -> None:
     page.block("Values of the rule sets in use")
     for title, values in (grounds.rules or {}).items():
         for value in values:
-            amount = f"{value.value:g}" + ("" if value.unit in {"", "-"} else f" {value.unit}")
-            page.line([value.meaning, amount, value.clause, title, value.status])
+            amount = counted(f"{value.value:g}" + ("" if value.unit in {"", "-"} else f" {value.unit}"))
+            clause = NO_CLAUSE if value.clause in {"", "-"} else value.clause
+            page.line([value.meaning, amount, clause, title, value.status])
     if not grounds.rules:
         page.none("not told")

@@ -9,9 +9,11 @@ from typing import TYPE_CHECKING
 from fleet import words
 from fleet.appraisal.views import VesselView
 from fleet.reports.figures import NONE, Figures
+from fleet.reports.known import speaks_for
 from fleet.reports.reason import why
 from fleet.reports.source import AppraisalLike, in_list_order, located
 from fleet.reports.workbook.page import Column, Page, Stamp
+from fleet.reports.workbook.the_list import SPEAKS_FOR, of_known
 from fleet.words import Notice
 
 if TYPE_CHECKING:
@@ -47,6 +49,7 @@ def draw_running_out(book: Workbook, appraisal: AppraisalLike, figures: Figures,
             Column("Vessel", 16),
             Column("Standing", 14),
             Column("Block", 14),
+            Column(SPEAKS_FOR, 13),
             Column("Retirement", 11),
             Column("Life left [years]", number=True),
             Column("Part", 16),
@@ -72,6 +75,7 @@ def draw_running_out(book: Workbook, appraisal: AppraisalLike, figures: Figures,
                 view.vessel,
                 view.standing,
                 view.block,
+                speaks_for(view),
                 view.retirement_on or NONE,
                 figures.years(view.life_left_years),
                 part.part if part else NONE,
@@ -82,7 +86,7 @@ def draw_running_out(book: Workbook, appraisal: AppraisalLike, figures: Figures,
                 figures.rate(place.planning_rate_mm_per_year if place else None),
                 place.rate_basis if place else NONE,
                 figures.years(place.life_at_least_measurable_rate_years if place else None),
-                view.rating_holds_until or NONE,
+                of_known(view, view.rating_holds_until),
                 why(view, figures),
             ],
             standing=view.standing,

@@ -3,15 +3,17 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from datetime import date
 from typing import TYPE_CHECKING
 
 from fleet import words
 from fleet.appraisal.views import LocationView, PartView, Place, VesselView
 from fleet.reports import cite
 from fleet.reports.figures import NONE, Figures
+from fleet.reports.known import KNOWN_ONLY, capital, known_only, measured_words, speaks_for
 from fleet.reports.reason import why
+from fleet.reports.sentences import cap_sentence, operating_sentence, plateau_sentence, relief_sentences
 from fleet.reports.source import AppraisalLike, Grounds, located, reconciled
-from fleet.reports.story import measured_words, operating_sentence, plateau_sentence, relief_sentences
 from fleet.reports.workbook.page import Column, Page, Stamp, Value
 
 if TYPE_CHECKING:
@@ -23,6 +25,8 @@ OPERATING = "Operating"
 """Heading, but for its unit, of the column with which the second printed page begins."""
 PLACE_LINE = 18
 """Letters of a place that stand on one line [count]."""
+SPEAKS_FOR = "Dates speak for"
+"""Heading of the column that says where ways out and life are not those of the whole vessel."""
 WHY, IN_WORDS, CLAUSE = "Why", "Relief and operation in words", "Required by clause"
 
 
@@ -52,7 +56,7 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
     )
     page.heads(columns(figures), freeze=1)
     for block, members in reconciled(appraisal).items():
-        page.block(f"{block}: {len(members)}" if members else f"{block}: none", aside=1)
+        page.block(block_head(block, len(members)), aside=1)
         for view in members:
             page.line(row(view, figures, status), standing=view.standing)
     turns = (f"{OPERATING} pressure [{figures.unit('pressure')}]", WALL)
@@ -92,7 +96,8 @@ def columns(figures: Figures) -> list[Column]:
         Column(f"Relief, lowest set {pressure}", number=True),
         Column(f"Margin today, relief {pressure}", number=True),
         Column(IN_WORDS, 26),
-        Column("Current MAWP holds until", 10, group="Ways out"),
+        Column(SPEAKS_FOR, 13, group="Ways out"),
+        Column("Current MAWP holds until", 11),
         Column(f"Pressure that reaches {pressure}", number=True),
         Column("Repair or renew by", 11),
         Column("Life left [years]", number=True, group="Dates"),
@@ -121,6 +126,50 @@ def columns(figures: Figures) -> list[Column]:
         Column("Doubts", number=True),
         Column("Gaps", number=True),
     ]
+
+
+def block_head(block: str, count: int) -> str:
+    """Head a block of the list: how many vessels it holds, and what its figures leave out.
+
+    Parameters
+    ----------
+    block : str
+        The block [text].
+    count : int
+        Vessels in it [count].
+
+    Returns
+    -------
+    str
+
+    Examples
+    --------
+    >>> block_head("rating held", 3), block_head("idle", 0)
+    ('rating held: 3', 'idle: none')
+    """
+    if not count:
+        return f"{block}: none"
+    return f"{block}: {count}; {KNOWN_ONLY}" if block == words.NO_VERDICT else f"{block}: {count}"
+
+
+def of_known(view: VesselView, day: date | None) -> Value:
+    """Give a date, in words where it speaks for known parts only: it must not be read as one of the vessel.
+
+    Parameters
+    ----------
+    view : VesselView
+        The vessel [-].
+    day : date or None
+        The date [date].
+
+    Returns
+    -------
+    Value
+    """
+    known = known_only(view)
+    if day is None:
+        return NONE
+    return f"{known}: {day.isoformat()}" if known else day
 
 
 def rules_status(grounds: Grounds) -> str:
@@ -201,12 +250,14 @@ def _relief(view: VesselView, figures: Figures) -> Sequence[Value]:
 
 def _ways_out(view: VesselView, figures: Figures) -> Sequence[Value]:
     ways = view.ways_out
-    if ways is None:
-        return (None, None, None)
+    partly = speaks_for(view)
+    if ways is None or view.block == words.RETIRED:
+        return (partly, None, None, None)
     return (
-        ways.rating_holds_until or NONE,
+        partly,
+        of_known(view, ways.rating_holds_until),
         figures.carries(ways.pressure_that_reaches_mpa),
-        ways.renew_by or NONE,
+        of_known(view, ways.renew_by),
     )
 
 
@@ -239,8 +290,13 @@ def _dates(view: VesselView, figures: Figures, status: str) -> Sequence[Value]:
         _governs_due(view),
         figures.years(view.internal_interval_years),
         f"{view.rules}{status}",
-        plateau_sentence(view, figures),
+        plateau_sentence(view, figures) or _cap_first(view, figures),
     )
+
+
+def _cap_first(view: VesselView, figures: Figures) -> str:
+    said = cap_sentence(view, figures)
+    return f"{capital(said)}." if said else ""
 
 
 def _rests_on(view: VesselView, place: LocationView | None, figures: Figures) -> Sequence[Value]:

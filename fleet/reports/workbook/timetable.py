@@ -12,7 +12,7 @@ from numpy.typing import NDArray
 
 from fleet import words
 from fleet.appraisal.views import VesselView
-from fleet.reports.figures import NONE, Figures
+from fleet.reports.figures import Figures
 from fleet.reports.source import AppraisalLike, TimetableLike
 from fleet.reports.workbook import ink
 from fleet.reports.workbook.page import Column, Page, Stamp
@@ -22,6 +22,9 @@ if TYPE_CHECKING:
 
 TOLERANCE = 1e-6
 """Relative tolerance within which a pressure still holds, as for the standing [-]."""
+MONTHS = ("January", "February", "March", "April", "May", "June", "July", "August", "September", "October",
+          "November", "December")  # fmt: skip
+"""Names of the months, whatever language the machine speaks [text]."""
 LEAD = 3
 """Columns before the first year [count]."""
 
@@ -60,11 +63,13 @@ class Row:
         -------
         str
         """
+        if self.view.block == words.RETIRED:
+            return words.RETIRED
         if self.first_short is None:
             return words.NO_VERDICT if self.view.standing == words.NO_VERDICT else "no figure"
         if self.first_short == len(years):
             return "holds"
-        return f"{years[self.first_short].year}{', by its wall' if self.by_wall else ''}"
+        return f"{year_heads(years)[self.first_short]}{', by its wall' if self.by_wall else ''}"
 
 
 def rows(views: Sequence[VesselView], table: TimetableLike) -> list[Row]:
@@ -80,7 +85,8 @@ def rows(views: Sequence[VesselView], table: TimetableLike) -> list[Row]:
     Returns
     -------
     list of Row
-        Those that drop in the same year by how far they have dropped; those of which nobody can say last.
+        Those that drop in the same year by how far they have dropped; those of which nobody can say after them,
+        and retired ones, of which nobody asks, last.
     """
     years = tuple(table.years)
     made = []
@@ -89,12 +95,12 @@ def rows(views: Sequence[VesselView], table: TimetableLike) -> list[Row]:
         current = float(table.current_mawp_mpa[number])
         made.append((_row(view, carried, current, years), current))
 
-    def order(pair: tuple[Row, float]) -> tuple[bool, int, float]:
+    def order(pair: tuple[Row, float]) -> tuple[int, int, float]:
         row, current = pair
         if row.first_short is None:
-            return True, 0, 0.0
+            return 2 if row.view.block == words.RETIRED else 1, 0, 0.0
         at = min(row.first_short, len(row.carried_mpa) - 1)
-        return False, row.first_short, float(row.carried_mpa[at]) / current
+        return 0, row.first_short, float(row.carried_mpa[at]) / current
 
     return [row for row, _ in sorted(made, key=order)]
 
@@ -102,7 +108,7 @@ def rows(views: Sequence[VesselView], table: TimetableLike) -> list[Row]:
 def _row(view: VesselView, carried: NDArray[np.float64], current: float, years: Sequence[date]) -> Row:
     """Find the first date that falls short by its pressure or by its wall; what is not known is not held."""
     by_pressure = _first_short(carried, current)
-    if by_pressure is None or view.standing == words.NO_VERDICT:
+    if by_pressure is None or view.standing == words.NO_VERDICT or view.block == words.RETIRED:
         return Row(view, carried, None)
     until = view.rating_holds_until
     by_wall = next((k for k, day in enumerate(years) if until is not None and day > until), len(years))
@@ -144,9 +150,10 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
     unit = figures.unit("pressure")
     page.title(
         "Timetable",
-        f"What each wall carries on {_day_of(years)} of each year [{unit}], capped as on the list.",
+        f"What each wall carries {_on(years)} [{unit}], capped as on the list.",
         "Left of and below the heavy stair the current MAWP holds; right of and above it, it does not.",
-        "By its wall: a minimum that is no matter of pressure is reached first. No verdict: measured parts only.",
+        "By its wall: a minimum that is no matter of pressure is reached first. No verdict: measured parts only. "
+        "Retired vessels stand last, outside the stair.",
     )
     page.heads(
         [
@@ -167,7 +174,7 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
 
 
 def year_heads(years: Sequence[date]) -> list[str]:
-    """Head the columns by their year, or by the whole day where two fall into one year.
+    """Head the columns by their year, or by the whole day where the year does not tell it.
 
     Parameters
     ----------
@@ -182,14 +189,23 @@ def year_heads(years: Sequence[date]) -> list[str]:
     --------
     >>> year_heads([date(2026, 12, 1), date(2027, 12, 1)])
     ['2026', '2027']
+    >>> year_heads([date(2027, 2, 28), date(2028, 2, 29)])
+    ['2027-02-28', '2028-02-29']
     """
-    heads = [str(day.year) for day in years]
-    return heads if len(set(heads)) == len(heads) else [day.isoformat() for day in years]
+    return [str(day.year) if _same_day(years) else day.isoformat() for day in years]
 
 
-def _day_of(years: Sequence[date]) -> str:
-    """Name the day of the year of the first date; the others may lie a day beside it in leap years."""
-    return f"{years[0].day} {years[0]:%B}" if years else NONE
+def _same_day(years: Sequence[date]) -> bool:
+    """Tell whether the dates are the same day of different years."""
+    days = {(day.month, day.day) for day in years}
+    return len(days) <= 1 and len({day.year for day in years}) == len(years)
+
+
+def _on(years: Sequence[date]) -> str:
+    """Say on which days the columns stand."""
+    if not years or not _same_day(years):
+        return "on the day that heads each column"
+    return f"on {years[0].day} {MONTHS[years[0].month - 1]} of each year"
 
 
 def _draw_stair(page: Page, first: int, made: Sequence[Row], count: int) -> None:
@@ -218,12 +234,10 @@ def _say_it(page: Page, made: Sequence[Row], years: Sequence[date]) -> None:
     _said(
         page, f"Hold to {years[-1].isoformat()}" if years else "Hold", _holding(made, len(years)), len(years)
     )
-    _said(
-        page,
-        "No figure or no verdict",
-        [row.view.vessel for row in made if row.first_short is None],
-        len(years),
-    )
+    unsaid = [row.view for row in made if row.first_short is None]
+    for head, retired in (("No figure or no verdict", False), ("Retired", True)):
+        tags = [view.vessel for view in unsaid if (view.block == words.RETIRED) == retired]
+        _said(page, head, tags, len(years))
     page.put(page.row, page.FIRST, f"{len(made)} vessels in all. {words.CAUTION}", "note")
 
 

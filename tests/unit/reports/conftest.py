@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass, field, replace
-from datetime import date, timedelta
+from datetime import date
 from typing import Any
 
 import numpy as np
@@ -43,7 +43,12 @@ class InventedAppraisal:
         return self.made
 
     def timetable(self, years: int = 10) -> InventedTimetable:
-        days = tuple(self.as_of + timedelta(days=int(number * 365.25)) for number in range(years))
+        days = tuple(
+            date(self.as_of.year + number, self.as_of.month, self.as_of.day)
+            if (self.as_of.month, self.as_of.day) != (2, 29) or (self.as_of.year + number) % 4 == 0
+            else date(self.as_of.year + number, 2, 28)
+            for number in range(1, years + 1)
+        )
         current = np.array([view.current_mawp_mpa or np.nan for view in self.made])
         drops = np.array([self.drops.get(view.vessel, np.nan) for view in self.made])
         today = np.array([view.mawp_today_mpa or np.nan for view in self.made])
@@ -131,8 +136,8 @@ def vessel(tag: str = "D-101", **changes: Any) -> VesselView:
         rating_holds_until=date(2035, 2, 2),
         standing=words.RATING_HELD,
         flags=(),
-        parts_measured=4,
-        parts_total=4,
+        parts_measured=2,
+        parts_total=2,
         relief=(ReliefView(f"PSV-{tag}", 1.6, None, None),),
         doubts=(),
         gaps=(),

@@ -25,7 +25,7 @@ def test_required_thickness_cites_the_direction_that_sets_it(make_part: Callable
     shell = make_part(formulas=("cylinder_axial_thickness_outside", "cylinder_hoop_thickness_outside"))
     assert cite.required_rests_on(shell, "hoop") == "Appendix 1-1(a)(1)"
     assert cite.required_rests_on(shell, "axial") == "UG-27(c)(2) on the outside radius"
-    assert cite.required_rests_on(shell, "structural") == "structural_minimum of the register"
+    assert cite.required_rests_on(shell, "structural") == "structural_minimum as given on the register"
     assert cite.required_rests_on(shell, None) == ""
 
 

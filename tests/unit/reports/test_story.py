@@ -12,18 +12,11 @@ from fleet.appraisal.views import PartView, Place, ReliefView, VesselView
 from fleet.reports.figures import Figures
 from fleet.reports.reason import telling_place, why
 from fleet.reports.source import AppraisalLike, blocks
-from fleet.reports.story import (
-    measured_words,
-    operating_sentence,
-    plateau_sentence,
-    relief_sentences,
-    story,
-    the_sum,
-)
+from fleet.reports.story import story, the_sum
 from fleet.words import notice
 
 Maker = Callable[..., VesselView]
-SI, US = Figures(units.SI), Figures(units.US)
+SI = Figures(units.SI)
 
 
 def test_the_sum_reconciles_list_and_register(appraisal: AppraisalLike) -> None:
@@ -58,6 +51,19 @@ def test_only_relief_above_today_gets_the_ochre_bar(appraisal: AppraisalLike) ->
     assert words.RELIEF_ABOVE_NOW in marked[0]
 
 
+def test_a_reset_by_pressure_alone_is_told_as_such_in_the_story(
+    make_vessel: Maker, make_appraisal: Callable[..., AppraisalLike]
+) -> None:
+    relief = (ReliefView("SV-1", 1.6, None, date(2027, 3, 1), "16 bar"),)
+    for standing, tail in ((words.BELOW_REQUIRED, ", by pressure alone, for its wall is below what is required."),
+                           (words.RATING_SHORT, ".")):  # fmt: skip
+        told = [sentence.text for sentence in
+                story(make_appraisal((make_vessel("D-1", standing=standing, relief=relief),)), SI)]  # fmt: skip
+        assert any(
+            text.endswith(f"SV-1 (1.600 MPa, written 16 bar) on D-1 by 2027-03-01{tail}") for text in told
+        )
+
+
 def test_the_story_names_six_tags_and_counts_the_rest(
     make_vessel: Maker, make_appraisal: Callable[..., AppraisalLike]
 ) -> None:
@@ -79,51 +85,6 @@ def test_a_rating_short_by_its_wall_is_not_told_as_a_drop_of_pressure(
         "1 vessel falls short of the rating by the carry-to date: D-422, whose wall is below the required "
         "thickness on 2028-06-01." in told
     )
-
-
-def test_relief_is_told_now_before_later_and_in_the_units_of_the_reader(make_vessel: Maker) -> None:
-    view = make_vessel(
-        mawp_today_mpa=1.5,
-        relief=(
-            ReliefView("B", 1.4, None, date(2029, 5, 1)),
-            ReliefView("A", 1.6, words.RELIEF_ABOVE_NOW, None),
-            ReliefView("C", 1.0, None, None),
-        ),
-    )
-    assert [sentence.text for sentence in relief_sentences(view, US)] == [
-        "A (233 psi) is set above what the wall carries today, 217 psi.",
-        "B (204 psi) is to be reset by 2029-05-01.",
-    ]
-
-
-def test_operating_pressure_likewise(make_vessel: Maker) -> None:
-    above = make_vessel(operating_above_today=True, mawp_today_mpa=1.2)
-    assert operating_sentence(above, SI) == (
-        "It operates at 1.350 MPa, above what the wall carries today, 1.200 MPa."
-    )
-    until = make_vessel(operating_until=date(2031, 2, 3))
-    assert (
-        operating_sentence(until, SI)
-        == "The wall carries its operating pressure of 1.350 MPa until 2031-02-03."
-    )
-    assert operating_sentence(make_vessel(operating_pressure_mpa=None), SI) == ""
-
-
-def test_on_the_plateau_both_intervals_are_told(make_vessel: Maker) -> None:
-    view = make_vessel(clause_interval_years=2.0, half_life_on_plateau_years=1.58)
-    assert plateau_sentence(view, SI) == (
-        "The clause allows an interval of 2.0 years; with twice the loss the rating holds only to half life, 1.5 years."
-    )
-    assert plateau_sentence(make_vessel(), SI) == ""
-    assert plateau_sentence(make_vessel(clause_interval_years=0.0, half_life_on_plateau_years=0.0), SI) == ""
-
-
-def test_measured_parts_only_is_said_when_a_part_is_missing(make_vessel: Maker) -> None:
-    vessel = make_vessel(parts_total=6)
-    assert vessel.parts_known < 6
-    assert measured_words(vessel) == f"measured parts only: {vessel.parts_known} of 6"
-    whole = make_vessel(parts_total=vessel.parts_known)
-    assert measured_words(whole) == f"{vessel.parts_known} of {vessel.parts_known}"
 
 
 @pytest.mark.parametrize(

@@ -16,7 +16,7 @@ import pytest
 
 import fleet.mechanics.rating  # noqa: F401 the register of formulas is filled by its import
 from fleet import units, words
-from fleet.appraisal.views import PartView, ReliefView, VesselView
+from fleet.appraisal.views import PartView, ReliefView, VesselView, WaysOut
 from fleet.errors import OurFault, Refused, UsageProblem
 from fleet.reports.figures import NONE, Figures
 from fleet.reports.source import AppraisalLike
@@ -149,6 +149,52 @@ def test_held_by_half_life_stands_instead_of_a_margin(book: Any) -> None:
     assert listed["F-007"]["Parts measured"] == "measured parts only: 1 of 2"
 
 
+def test_dates_of_known_parts_are_never_printed_as_those_of_the_vessel(
+    make_vessel: Maker, make_appraisal: Many
+) -> None:
+    ways = WaysOut(date(2067, 7, 27), None, date(2109, 5, 15))
+    whole = make_vessel("W").parts_known
+    made = (
+        make_vessel("P", standing=words.NO_VERDICT, parts_total=3, ways_out=ways, life_left_years=7.0),
+        make_vessel("Q", standing=words.NO_VERDICT, parts_total=whole, ways_out=ways, life_left_years=7.0),
+        make_vessel("W", standing=words.RUNNING_OUT, ways_out=ways),
+        make_vessel("X", standing=words.RATING_SHORT, block=words.RETIRED, ways_out=ways),
+    )
+    book = _read(make_appraisal(made))
+    listed = {row["Vessel"]: row for row in _rows(book["The list"])}
+    dates = ("Dates speak for", "Current MAWP holds until", "Repair or renew by")
+    assert [listed["P"][head] for head in dates] == [
+        "measured parts only: 2 of 3",
+        "known parts only, 2 of 3: 2067-07-27",
+        "known parts only, 2 of 3: 2109-05-15",
+    ]
+    assert [listed["Q"][head] for head in dates] == [
+        "without what was not assessed",
+        "without what was not assessed: 2067-07-27",
+        "without what was not assessed: 2109-05-15",
+    ]
+    assert listed["W"]["Dates speak for"] in {"", None}
+    assert [listed["W"][head].date() for head in dates[1:]] == [date(2067, 7, 27), date(2109, 5, 15)]
+    assert [listed["X"][head] for head in dates[1:]] == [None, None]
+    heads = [cell.value for cell in book["The list"]["C"]]
+    assert "no verdict: 2; pressures, life and dates of what is known only" in heads
+    running = {row["Vessel"]: row for row in _rows(book["Running out"])}
+    assert running["P"]["Dates speak for"] == "measured parts only: 2 of 3"
+    assert running["P"]["Current MAWP holds until"] == "known parts only, 2 of 3: 2035-02-02"
+
+
+def test_the_list_says_when_the_cap_comes_before_the_interval(
+    make_vessel: Maker, make_appraisal: Many
+) -> None:
+    made = make_appraisal((make_vessel("A", internal_interval_years=3.72), make_vessel("B")))
+    listed = {row["Vessel"]: row for row in _rows(_read(made)["The list"])}
+    assert listed["A"]["Interval in words"] == (
+        "The cap of the rule set, counted from the last look, comes first; "
+        "half life allows 3.7 years from the last reading."
+    )
+    assert listed["B"]["Interval in words"] in {"", None}
+
+
 def test_margins_are_against_what_the_wall_carries_today(book: Any) -> None:
     row = next(row for row in _rows(book["The list"]) if row["Vessel"] == "D-101")
     assert row["Margin today, operating [MPa]"] == -0.038
@@ -244,10 +290,10 @@ def test_the_stair_divides_the_years_that_hold_from_those_that_do_not(book: Any)
             for number, cell in enumerate(cells)
             if cell.border.left is not None and cell.border.left.style == "thick"
         ]
-        if says in {"no figure", "no verdict"}:
+        if says in {"no figure", "no verdict", "retired"}:
             assert heavy == []
             continue
-        first = years if says == "holds" else next(k for k in range(years) if int(says[:4]) == 2026 + k)
+        first = years if says == "holds" else next(k for k in range(years) if int(says[:4]) == 2027 + k)
         assert heavy == [first]
         assert all(cell.value >= current for cell in cells[:first])
         if "by its wall" not in says:
@@ -257,9 +303,9 @@ def test_the_stair_divides_the_years_that_hold_from_those_that_do_not(book: Any)
 def test_the_stair_never_steps_back(book: Any) -> None:
     sheet = book["Timetable"]
     said = [row["First year short"] for row in _rows(sheet) if row["Current MAWP [MPa]"] is not None]
-    steps = [9999 if word == "holds" else int(word[:4]) for word in said if word[:2] != "no"]
+    steps = [9999 if word == "holds" else int(word[:4]) for word in said if word[:2] not in {"no", "re"}]
     assert steps == sorted(steps)
-    assert [word[:2] for word in said][-2:] == ["no", "no"]
+    assert [word[:2] for word in said][-2:] == ["no", "re"]
 
 
 def test_beneath_the_timetable_every_vessel_is_named_once_more(appraisal: AppraisalLike, book: Any) -> None:
@@ -267,7 +313,7 @@ def test_beneath_the_timetable_every_vessel_is_named_once_more(appraisal: Apprai
     said = [
         cell.value
         for cell in sheet["B"]
-        if cell.value and str(cell.value).startswith(("First short on", "Hold", "No figure"))
+        if cell.value and str(cell.value).startswith(("First short on", "Hold", "No figure", "Retired:"))
     ]
     named = [tag for text in said for tag in text.partition(": ")[2].split(", ") if tag != "none"]
     assert sorted(named) == sorted(view.vessel for view in appraisal.views())
@@ -279,12 +325,42 @@ def test_no_verdict_is_never_said_to_hold(make_vessel: Maker, make_appraisal: Ma
     assert rows(made.views(), made.timetable())[0].says(years) == words.NO_VERDICT
 
 
+def test_a_retired_vessel_stands_last_and_outside_the_stair(make_vessel: Maker, make_appraisal: Many) -> None:
+    made = make_appraisal(
+        (
+            make_vessel("A", block=words.RETIRED, standing=words.BELOW_REQUIRED),
+            make_vessel("B", standing=words.NO_VERDICT),
+            make_vessel("C", rating_holds_until=date(2099, 1, 1)),
+        ),
+        drops={"A": 0.5, "B": 0.0, "C": 0.0},
+    )
+    years = tuple(made.timetable().years)
+    found = [(row.view.vessel, row.says(years)) for row in rows(made.views(), made.timetable())]
+    assert found == [("C", "holds"), ("B", "no verdict"), ("A", "retired")]
+
+
 def test_a_wall_that_fails_before_its_pressure_is_short_in_that_year(
     make_vessel: Maker, make_appraisal: Many
 ) -> None:
     made = make_appraisal((make_vessel("A", rating_holds_until=date(2029, 1, 1)),), drops={"A": 0.0})
     years = tuple(made.timetable().years)
     assert rows(made.views(), made.timetable())[0].says(years) == "2029, by its wall"
+
+
+@pytest.mark.parametrize(
+    ("as_of", "says", "head"),
+    [
+        (date(2026, 12, 1), "on 1 December of each year", "2027 [MPa]"),
+        (date(2024, 2, 29), "on the day that heads each column", "2025-02-28 [MPa]"),
+    ],
+)
+def test_the_heading_of_the_timetable_says_the_days_of_its_columns(
+    make_vessel: Maker, make_appraisal: Many, as_of: date, says: str, head: str
+) -> None:
+    made = make_appraisal((make_vessel("A"),), as_of=as_of)
+    sheet = _read(made)["Timetable"]
+    assert sheet["B2"].value == f"What each wall carries {says} [MPa], capped as on the list."
+    assert [cell.value for cell in sheet[_head_row(sheet)]][4] == head
 
 
 def test_years_that_fall_together_are_told_apart() -> None:
@@ -358,6 +434,20 @@ def test_how_to_read_tells_the_record(appraisal: AppraisalLike) -> None:
     assert read["rate floor"] == "0.025 mm/year"
     assert set(words.STANDINGS) <= set(read)
     assert read["program version"]
+
+
+def test_how_to_read_counts_its_years_and_says_where_no_clause_stands(appraisal: AppraisalLike) -> None:
+    sets = {name: load_rule_set(name) for name in ("api510", "choices")}
+    rules = {one.title: list(one.values.values()) for one in sets.values()}
+    read = _rows(_read(appraisal, rules=rules, settings=[("list life", "1 years")])["How to read"])
+    told = {row["What"]: row for row in read}
+    assert told[sets["api510"].values["internal_cap_years"].meaning]["What it says"] == "10 years"
+    choice = told[sets["choices"].values["list_life_years"].meaning]
+    assert (choice["What it says"], choice["Clause"]) == ("1 year", "no clause: a choice of this project")
+    assert told["list life"]["What it says"] == "1 year"
+    assert "filtered but not sorted" in told["filter and sort"]["What it says"]
+    assert "from which this list was read" in told["which head that is"]["What it says"]
+    assert "as given on the register (structural_minimum" in told["set by"]["What it says"]
 
 
 def test_an_empty_register_makes_a_workbook_that_says_none(make_appraisal: Many) -> None:
