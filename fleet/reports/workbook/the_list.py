@@ -27,7 +27,9 @@ PLACE_LINE = 18
 """Letters of a place that stand on one line [count]."""
 SPEAKS_FOR = "Dates speak for"
 """Heading of the column that says where ways out and life are not those of the whole vessel."""
-WHY, IN_WORDS, CLAUSE = "Why", "Relief and operation in words", "Required by clause"
+WHY, IN_WORDS, INTERVAL, CLAUSE = (
+    "Why", "Relief and operation in words", "Interval in words", "Required by clause",
+)  # fmt: skip
 
 
 def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stamp, grounds: Grounds) -> None:
@@ -60,7 +62,7 @@ def draw(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stam
         for view in members:
             page.line(row(view, figures, status), standing=view.standing)
     turns = (f"{OPERATING} pressure [{figures.unit('pressure')}]", WALL)
-    page.finish(breaks_before=turns, elastic=(WHY, IN_WORDS, CLAUSE))
+    page.finish(breaks_before=turns, elastic=(IN_WORDS, INTERVAL, CLAUSE))
 
 
 def columns(figures: Figures) -> list[Column]:
@@ -82,7 +84,8 @@ def columns(figures: Figures) -> list[Column]:
         Column("Standing", 11),
         Column("Flags", 11),
         Column("Service", 16),
-        Column(WHY, 26),
+        Column(WHY, 30),
+        Column(IN_WORDS, 40),
         Column(f"Current MAWP {pressure}", number=True, group="Pressure"),
         Column(f"MAWP today {pressure}", number=True),
         Column(f"Projected MAWP {pressure}", number=True),
@@ -91,12 +94,11 @@ def columns(figures: Figures) -> list[Column]:
         Column(f"Margin then {pressure}", 9, number=True),
         Column("Governs pressure", 18),
         Column(f"At list's end {pressure}", number=True),
-        Column(f"{OPERATING} pressure {pressure}", number=True, group="Relief and operation"),
+        Column(f"{OPERATING} pressure {pressure}", number=True, group="Margins"),
         Column(f"Margin today, operating {pressure}", number=True),
         Column(f"Relief, lowest set {pressure}", number=True),
         Column(f"Margin today, relief {pressure}", number=True),
-        Column(IN_WORDS, 26),
-        Column(SPEAKS_FOR, 13, group="Ways out"),
+        Column(SPEAKS_FOR, 15, group="Ways out", least=15),
         Column("Current MAWP holds until", 11),
         Column(f"Pressure that reaches {pressure}", number=True),
         Column("Repair or renew by", 11),
@@ -107,7 +109,7 @@ def columns(figures: Figures) -> list[Column]:
         Column("Governs due", 18),
         Column("Interval [years]", number=True),
         Column("By the rules", 12),
-        Column("Interval in words", 20),
+        Column(INTERVAL, 24),
         Column(WALL, 18, group="The wall at the place that governs life"),
         Column(f"Last wall {length}", number=True),
         Column("Last on", 11),
@@ -209,7 +211,8 @@ def row(view: VesselView, figures: Figures, status: str = "") -> list[Value]:
     """
     part, place = located(view, view.governing_life)
     return [
-        *(view.vessel, view.block, view.standing, ", ".join(view.flags), view.service, why(view, figures)),
+        *(view.vessel, view.block, view.standing, ", ".join(view.flags), view.service),
+        *(why(view, figures), _in_words(view, figures)),
         *_pressures(view, figures),
         *_relief(view, figures),
         *_ways_out(view, figures),
@@ -235,16 +238,19 @@ def _pressures(view: VesselView, figures: Figures) -> Sequence[Value]:
     )
 
 
-def _relief(view: VesselView, figures: Figures) -> Sequence[Value]:
-    lowest = min((device.set_pressure_mpa for device in view.relief), default=None)
+def _in_words(view: VesselView, figures: Figures) -> str:
     said = [sentence.text for sentence in relief_sentences(view, figures)]
     said.append(operating_sentence(view, figures))
+    return " ".join(text for text in said if text)
+
+
+def _relief(view: VesselView, figures: Figures) -> Sequence[Value]:
+    lowest = min((device.set_pressure_mpa for device in view.relief), default=None)
     return (
         figures.asked(view.operating_pressure_mpa),
         figures.carries(_less(view.mawp_today_mpa, view.operating_pressure_mpa)),
         figures.asked(lowest),
         figures.carries(_less(view.mawp_today_mpa, lowest)),
-        " ".join(text for text in said if text),
     )
 
 
