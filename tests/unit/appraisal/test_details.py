@@ -1,0 +1,103 @@
+"""What the rules of an appraisal leave to the reader, and slips that were made once."""
+
+from __future__ import annotations
+
+import math
+from datetime import date
+
+import numpy as np
+import pytest
+from invented import Fleet, codes, location_of, one_cylinder, part_of
+
+from fleet.appraisal.groups import any_by, count_by, greatest_by, least_by, place_of_least
+
+
+def test_new_metal_elsewhere_does_not_hide_a_visit_to_a_location_that_stands_before_it() -> None:
+    fleet = one_cylinder(("2010-01-01", 13.0), ("2020-01-01", 12.8))
+    fleet.read(0, ("2024-01-01", None), result="no echo")
+    fleet.location(0, "L2")
+    fleet.read(1, ("2012-01-01", 13.0), ("2024-01-01", 12.9))
+    fleet.restart(1, "new metal", "2011-06-01")
+    view = fleet.view()
+    assert "no echo at last visit" in codes(view.gaps)
+    assert view.standing == "no verdict"
+
+
+def test_the_timetable_stands_on_the_anniversaries_of_the_as_of_date() -> None:
+    table = one_cylinder(("2010-01-01", 13.0), ("2020-01-01", 12.0)).appraise("2024-02-29").timetable(4)
+    assert table.years == (date(2025, 2, 28), date(2026, 2, 28), date(2027, 2, 28), date(2028, 2, 29))
+    assert table.mawp_mpa.shape == (1, 4)
+    assert (np.diff(table.mawp_mpa) <= 0).all()
+
+
+def test_an_unknown_edition_is_doubted_only_where_a_thick_form_serves() -> None:
+    thin = one_cylinder(("2010-01-01", 13.0), ("2020-01-01", 12.0), code_edition="")
+    assert "edition unknown" not in codes(thin.view().doubts)
+    # 60 MPa on 100 mm: 0.385·S·E = 38.5 MPa is passed
+    thick = Fleet()
+    thick.vessel(code_edition="", nameplate_mawp_mpa=60.0, design_pressure_mpa=60.0)
+    thick.part(inside_diameter_mm=100.0, nominal_thickness_mm=60.0)
+    thick.location()
+    thick.read(0, ("2010-01-01", 60.0), ("2020-01-01", 59.0))
+    assert "edition unknown" in codes(thick.view().doubts)
+
+
+def test_only_the_points_that_decide_are_named_for_re_gauging() -> None:
+    # both locations lost 0.9 mm in the last two years after eight years of 0.05; only the first is near its required wall
+    fleet = Fleet()
+    fleet.vessel(nameplate_mawp_mpa=2.2, design_pressure_mpa=2.2)
+    fleet.part(nominal_thickness_mm=14.0)
+    fleet.location(0, "near")
+    fleet.read(0, ("2015-01-01", 14.0), ("2023-01-01", 13.6), ("2025-01-01", 13.1))
+    fleet.part(0, "head", shape="sphere")
+    fleet.location(1, "far")
+    fleet.read(1, ("2015-01-01", 14.0), ("2023-01-01", 13.6), ("2025-01-01", 13.1))
+    view = fleet.view()
+    assert "re-gauge" in view.flags
+    assert [str(place) for place in view.re_gauge] == ["shell / near"]
+    assert view.re_gauge_by is not None
+
+
+def test_a_rate_chosen_before_a_restart_counts_among_the_old_ones() -> None:
+    fleet = one_cylinder(("2010-01-01", 14.0), ("2018-01-01", 13.6))
+    fleet.decide(0, "chosen rate", "2018-06-01", rate_mm_per_year=0.4, review_day=math.inf, second_by="B")
+    fleet.restart(0, "new service", "2019-01-01")
+    fleet.read(0, ("2023-01-01", 13.5))
+    place = location_of(fleet.view())
+    assert place.rate_basis == "before restart"
+    assert place.planning_rate_mm_per_year == pytest.approx(0.4)
+
+
+def test_a_given_limit_below_the_current_mawp_is_rating_short_and_never_held() -> None:
+    fleet = Fleet()
+    fleet.vessel()
+    fleet.part(other_pressure_limit_mpa=0.8)
+    fleet.location()
+    fleet.read(0, ("2015-01-01", 13.0), ("2025-01-01", 12.0))
+    view = fleet.view()
+    assert view.standing == "rating short"
+    assert view.mawp_today_mpa == pytest.approx(0.8)
+    assert view.rating_holds_until == date(2025, 1, 1)  # the last observation: no wall makes it hold
+
+
+def test_pressures_are_carried_as_somebody_wrote_them() -> None:
+    fleet = one_cylinder(("2010-01-01", 13.0), ("2020-01-01", 12.0), nameplate_mawp_written="145 psi")
+    fleet.relief_devices.append({"vessel": 0, "device": "PSV-1", "set_pressure_mpa": 0.9, "written": "130 psi"})
+    view = fleet.view()
+    assert view.written == {"nameplate_mawp": "145 psi"}
+    assert view.relief[0].written == "130 psi"
+
+
+def test_the_pressure_formula_stands_beside_the_thickness_formula() -> None:
+    part = part_of(one_cylinder(("2010-01-01", 13.0), ("2020-01-01", 12.0)).view())
+    assert any(name.endswith("thickness_outside") for name in part.formulas)
+    assert any("pressure" in name for name in part.formulas)
+
+
+def test_groups_without_rows_have_nothing() -> None:
+    values, group = np.array([2.0, np.nan, 5.0]), np.array([0, 0, 2])
+    assert np.array_equal(least_by(values, group, 4), [2.0, np.nan, 5.0, np.nan], equal_nan=True)
+    assert np.array_equal(greatest_by(values, group, 4), [2.0, np.nan, 5.0, np.nan], equal_nan=True)
+    assert place_of_least(values, group, 4).tolist() == [0, -1, 2, -1]
+    assert any_by(np.array([True, False, True]), group, 4).tolist() == [True, False, True, False]
+    assert count_by(np.array([True, True, False]), group, 4).tolist() == [2, 0, 0, 0]
