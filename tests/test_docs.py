@@ -86,7 +86,9 @@ def test_the_first_screens_carry_the_caution() -> None:
 
 @pytest.mark.parametrize("command", commands(), ids=" ".join)
 def test_every_command_has_help_with_an_example(command: tuple[str, ...]) -> None:
-    shown = subprocess.run([str(FLEET), *command, "--help"], capture_output=True, text=True, check=True).stdout
+    shown = subprocess.run(
+        [str(FLEET), *command, "--help"], capture_output=True, text=True, check=True
+    ).stdout
     assert f"Example:  fleet {' '.join(command)}" in shown
 
 

@@ -85,7 +85,9 @@ def test_every_argument_is_named_in_order_with_its_unit(path: Path) -> None:
         named = [each for names, _ in found for each in names]
         if wanted != named:
             wrong.append(f"{name}: takes {wanted}, documents {named}")
-        wrong += [f"{name}: {', '.join(names)} has no unit in brackets" for names, text in found if "[" not in text]
+        wrong += [
+            f"{name}: {', '.join(names)} has no unit in brackets" for names, text in found if "[" not in text
+        ]
     assert not wrong, "\n".join(wrong)
 
 

@@ -51,7 +51,9 @@ CLOCKS = {"now", "today", "utcnow", "time"}
 
 
 def modules() -> list[Path]:
-    return sorted(path for path in PACKAGE.rglob("*.py") if not {"migrations", "sample_data"} & set(path.parts))
+    return sorted(
+        path for path in PACKAGE.rglob("*.py") if not {"migrations", "sample_data"} & set(path.parts)
+    )
 
 
 def layer_of(path: Path) -> str:
@@ -110,7 +112,9 @@ def test_the_command_line_imports_only_typer_errors_and_words_at_the_top(path: P
 
 
 @pytest.mark.parametrize(
-    "path", [path for path in modules() if layer_of(path) in PURE], ids=lambda path: str(path.relative_to(PACKAGE))
+    "path",
+    [path for path in modules() if layer_of(path) in PURE],
+    ids=lambda path: str(path.relative_to(PACKAGE)),
 )
 def test_the_pure_packages_read_no_clock(path: Path) -> None:
     tree = ast.parse(path.read_text(encoding="utf-8"))

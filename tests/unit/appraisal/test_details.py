@@ -82,7 +82,9 @@ def test_a_given_limit_below_the_current_mawp_is_rating_short_and_never_held() -
 
 def test_pressures_are_carried_as_somebody_wrote_them() -> None:
     fleet = one_cylinder(("2010-01-01", 13.0), ("2020-01-01", 12.0), nameplate_mawp_written="145 psi")
-    fleet.relief_devices.append({"vessel": 0, "device": "PSV-1", "set_pressure_mpa": 0.9, "written": "130 psi"})
+    fleet.relief_devices.append(
+        {"vessel": 0, "device": "PSV-1", "set_pressure_mpa": 0.9, "written": "130 psi"}
+    )
     view = fleet.view()
     assert view.written == {"nameplate_mawp": "145 psi"}
     assert view.relief[0].written == "130 psi"

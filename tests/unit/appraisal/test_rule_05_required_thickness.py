@@ -297,7 +297,9 @@ def test_rule_5_12_a_blank_datum_gives_no_figure_and_a_gap_that_names_it(
     if shape == "hemispherical head":
         every["crown_radius_mm"] = math.nan
     if shape == "flat cover":
-        every["gasket_diameter_mm"] = 200.0  # 200·√(0.3·1/100) = 10.95 mm: the wall of 14 is enough at no head
+        every["gasket_diameter_mm"] = (
+            200.0  # 200·√(0.3·1/100) = 10.95 mm: the wall of 14 is enough at no head
+        )
     view = view_with(shape=shape, **(every | {blank: math.nan}))
     part = part_of(view)
     assert (part.required_thickness_mm, part.mawp_today_mpa, part.projected_mawp_mpa) == (None, None, None)
