@@ -276,7 +276,8 @@ def _standings(
     at = wall - known < AT_REQUIRED_ERRORS * bench.found.wall_error_mm
     used = today < known
     short = (projected < known * (1 - TOLERANCE)) | (mawp < current * (1 - TOLERANCE))
-    unknown = ~bench.trusted | np.isnan(wall) | np.isnan(today) | np.isnan(mawp)
+    # a location never read is a gap; its part is judged by its others, or not at all where none was read
+    unknown = ~np.isnan(wall) & (~bench.trusted | np.isnan(today) | np.isnan(mawp))
     running = retirement <= horizon
     return np.select(
         [below, at, used, short, unknown, running], [BELOW, AT, USED, SHORT, NONE, RUNNING], HELD

@@ -110,7 +110,7 @@ def location_view(appraisal: Appraisal, row: int, doubts: tuple[Notice, ...]) ->
         projected_mawp_mpa=_number(judged.projected_mpa, row),
         doubts=doubts,
         position=str(inputs.locations.position[row]),
-        standing=STANDINGS[int(judged.standing[row])],
+        standing=words.NO_VERDICT if used is None else STANDINGS[int(judged.standing[row])],
         required_by=SETS[int(need.by[row])] if need.by[row] >= 0 else None,
         span_years=_number(now.long_years, row),
         short_span_years=_number(now.short_years, row),
@@ -346,7 +346,8 @@ def _ways_out(
         or (judged.standing[row] <= SHORT and SETS[int(need.by[row])] in NOT_PRESSURE)
         for row in rows
     )
-    unknown = any(np.isnan(judged.projected_mpa[row]) for row in rows) or not all(
+    walls = appraisal.bench.found.now.wall_used_mm
+    unknown = any(np.isnan(judged.projected_mpa[row]) and walls[row] > 0 for row in rows) or not all(
         part.measured for part in parts
     )
     reaches = _least([part.projected_mawp_mpa for part in parts])

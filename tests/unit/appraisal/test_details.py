@@ -7,7 +7,7 @@ from datetime import date
 
 import numpy as np
 import pytest
-from invented import Fleet, codes, location_of, one_cylinder, part_of
+from invented import Fleet, codes, location_of, one_cylinder, ordinal, part_of
 
 from fleet.appraisal.groups import any_by, count_by, greatest_by, least_by, place_of_least
 
@@ -21,6 +21,15 @@ def test_new_metal_elsewhere_does_not_hide_a_visit_to_a_location_that_stands_bef
     view = fleet.view()
     assert "no echo at last visit" in codes(view.gaps)
     assert view.standing == "no verdict"
+
+
+def test_a_location_never_read_is_a_gap_and_leaves_its_part_to_the_others() -> None:
+    fleet = one_cylinder(("2010-01-01", 13.0), ("2025-01-01", 12.9), next_survey_day=ordinal("2028-01-01"))
+    fleet.location(0, "L2")
+    view = fleet.view()
+    assert view.standing == "rating held"
+    assert "location never measured" in codes(view.gaps)
+    assert location_of(view, name="L2").standing == "no verdict"
 
 
 def test_the_timetable_stands_on_the_anniversaries_of_the_as_of_date() -> None:
@@ -43,7 +52,7 @@ def test_an_unknown_edition_is_doubted_only_where_a_thick_form_serves() -> None:
 
 
 def test_only_the_points_that_decide_are_named_for_re_gauging() -> None:
-    # both locations lost 0.9 mm in the last two years after eight years of 0.05; only the first is near its required wall
+    # both locations lost 0.5 mm in the last two years after 0.4 in eight; only the first is near its required wall
     fleet = Fleet()
     fleet.vessel(nameplate_mawp_mpa=2.2, design_pressure_mpa=2.2)
     fleet.part(nominal_thickness_mm=14.0)
