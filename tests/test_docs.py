@@ -78,6 +78,15 @@ def test_the_day_of_the_readme_runs_as_printed(tmp_path: Path) -> None:
         assert done.returncode == 0, f"{line}\n{done.stdout}\n{done.stderr}"
 
 
+def test_the_page_shown_in_the_readme_is_the_page_of_the_demo(brackwater: Path) -> None:
+    (page,) = re.findall(r"^```text\n(.*?)^```", README, re.MULTILINE | re.DOTALL)
+    tag = page.split()[0]
+    shown = subprocess.run([str(FLEET), "show", tag, "--db", str(brackwater / "fleet.db"), "--as-of", "2026-12-01"],
+                           capture_output=True, text=True, check=True).stdout  # fmt: skip
+    told = [line for line in page.splitlines() if line.strip()]
+    assert [line for line in told if line not in shown.splitlines()] == []
+
+
 def test_the_first_screens_carry_the_caution() -> None:
     assert words.CAUTION.split(". ")[0] in " ".join(README.split())
     shown = subprocess.run([str(FLEET)], capture_output=True, text=True, check=False)
