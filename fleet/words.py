@@ -197,6 +197,7 @@ DOUBTS = _words(
     ("thin torispherical head", "the head is thinner than 0.002 of its crown radius; the formula may overstate it", "have the head calculated by the thin-head rules"),
     ("head proportions not checked", "a diameter, crown or knuckle radius is missing to judge the proportions of the head", "load inside_diameter, crown_radius and knuckle_radius"),
     ("cover bolts not assessed", "the cover is bolted through a gasket; the moment of its bolts is not in the figure", "have the cover calculated with its bolt load"),
+    ("diameters disagree", "inside diameter, outside diameter and nominal wall contradict each other; the worse is used", "correct the one that is wrong"),
     ("edition unknown", "code_edition gives no year; the lesser of the two thick-wall forms is used", "load code_edition"),
     ("lining not said to count", "lining_counts_in_strength is blank; taken as no", "load lining_counts_in_strength"),
 )  # fmt: skip
@@ -225,6 +226,7 @@ GAPS = _words(
     ("axial-load minimum blank", "required_thickness_axial is blank; taken as none", "load required_thickness_axial; write 0 where there is none"),
     ("no rate", "no rate can be had: one reading, no nominal, no expected rate", "measure again, or load nominal_thickness or expected_rate"),
     ("rate from nominal", "the rate rests on nominal thickness, not on a first reading", "measure again; plate is seldom delivered at nominal"),
+    ("due date not known", "a measured location has no life for want of a datum, so the due dates are not known", "load what the other gaps name"),
     ("no inspection on record", "no counting internal or on-stream inspection is recorded; counted from in-service", "record the inspection"),
     ("no external on record", "no external inspection is recorded; counted from in-service", "record the inspection"),
     ("no planned survey", "next_survey_on is blank", "load the date of the next survey that is certain to be made"),

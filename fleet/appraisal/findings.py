@@ -36,6 +36,7 @@ def write_findings(
     _never_measured(book, bench, measured, partless)
     _visits(book, bench)
     _missing(book, bench, judged, vacuum)
+    _diameters(book, bench)
     _blank_choices(book, bench)
     _readings(book, bench)
     _rates(book, bench)
@@ -114,6 +115,21 @@ def _missing(book: NoteBook, bench: Bench, judged: Judged, vacuum: Bools) -> Non
     book.add(
         "lining thickness blank", "location", found.lining_unknown & found.live, "lining_thickness is blank"
     )
+
+
+def _diameters(book: NoteBook, bench: Bench) -> None:
+    parts = bench.inputs.parts
+    apart = parts.outside_diameter_mm - parts.inside_diameter_mm - 2 * parts.nominal_thickness_mm
+    straight = np.isin(
+        parts.shape, ("cylinder", "nozzle neck", "sphere", "hemispherical head", "ellipsoidal head")
+    )
+    wrong = (
+        bench.found.live_part
+        & straight
+        & (np.abs(apart) > np.maximum(1.0, 0.001 * parts.outside_diameter_mm))
+    )
+    book.add("diameters disagree", "part", wrong, lambda row: (
+        f"outside less inside diameter and twice nominal leaves {apart[row]:.1f} mm"))  # fmt: skip
 
 
 def _blank_choices(book: NoteBook, bench: Bench) -> None:
@@ -208,6 +224,9 @@ def _vessels(book: NoteBook, bench: Bench, judged: Judged) -> None:
     )
     book.add("no inspection on record", "vessel", kept & seen.no_internal, "counted from in-service")
     book.add("no external on record", "vessel", kept & seen.no_external, "counted from in-service")
+    past = kept & (vessels.next_survey_day < bench.as_of_day)
+    book.add("no planned survey", "vessel", past, lambda row: (
+        f"next_survey_on {_day(vessels.next_survey_day, row)} is past"))  # fmt: skip
     book.add(
         "no planned survey", "vessel", kept & np.isnan(vessels.next_survey_day), "next_survey_on is blank"
     )
@@ -221,6 +240,8 @@ def _vessels(book: NoteBook, bench: Bench, judged: Judged) -> None:
         lambda row: f"state '{vessels.state[row]}' has no date",
     )
     carry, due = judged.carry, judged.due
+    book.add("due date not known", "vessel", kept & judged.due_uncertain, lambda row: (
+        f"no later than {_day(due.internal_day, row)}; a measured location has no life"))  # fmt: skip
     book.add("planned after due", "vessel", kept & carry.planned_after_due, lambda row: (
         f"planned {_day(vessels.next_survey_day, row)}, due {_day(due.internal_day, row)}"))  # fmt: skip
     book.add("deferral not in force", "vessel", due.deferral_refused, lambda row: (

@@ -108,6 +108,8 @@ class Judged:
         A retirement up to this day is `running out` [day].
     vessel_standing : ndarray
         Place in `STANDINGS` of the vessel [-].
+    due_uncertain : ndarray
+        Vessels with a measured location whose life cannot be had: the due dates are only the latest possible [-].
     retirement_place, pressure_place : ndarray
         Location that governs life, and pressure; -1 where none [-].
     """
@@ -128,6 +130,7 @@ class Judged:
     carry: Carry
     horizon_day: Floats
     vessel_standing: Ints
+    due_uncertain: Bools
     retirement_place: Ints
     pressure_place: Ints
 
@@ -239,6 +242,7 @@ def judge(bench: Bench, plan: Planning) -> Judged:
     np.minimum.at(worst, vessel_of[found.live], standing[found.live])
     worst = np.where(bench.withheld, np.minimum(worst, NONE), worst)
 
+    lacks = found.live & ~np.isnan(wall) & (~trusted | np.isnan(rate))
     shown = np.where(trusted, uncapped[:count], np.nan)
     # a given limit below the current MAWP: no wall makes the rating hold
     limited = trusted & (need.limit_mpa[:count] < need.current_mpa[:count] * (1 - TOLERANCE))
@@ -259,6 +263,7 @@ def judge(bench: Bench, plan: Planning) -> Judged:
         carry=carry,
         horizon_day=horizon,
         vessel_standing=worst,
+        due_uncertain=any_by(lacks, vessel_of, vessels),
         retirement_place=retirement_place,
         pressure_place=place_of_least(shown, vessel_of, vessels),
     )

@@ -226,14 +226,14 @@ def view_of(appraisal: Appraisal, i: int) -> VesselView:
         projected_mawp_uncapped_mpa=_least([part.projected_mawp_uncapped_mpa for part in parts]),
         governing_pressure=place(appraisal, int(judged.pressure_place[i])),
         governing_life=place(appraisal, int(judged.retirement_place[i])),
-        governing_due=place(appraisal, governing),
+        governing_due=None if judged.due_uncertain[i] else place(appraisal, governing),
         retirement_on=retirement,
         life_left_years=None
         if retirement is None
         else max((retirement - appraisal.as_of).days, 0) / DAYS_PER_YEAR,
-        internal_due_on=_date(due.internal_day, i),
-        external_due_on=_date(due.external_day, i),
-        internal_interval_years=_number(due.interval_years, i),
+        internal_due_on=_due(appraisal, due.internal_day, i),
+        external_due_on=_due(appraisal, due.external_day, i),
+        internal_interval_years=None if judged.due_uncertain[i] else _number(due.interval_years, i),
         rating_holds_until=holds,
         standing=standing,
         flags=_flags(appraisal, i, soon, re_gauge),
@@ -278,6 +278,12 @@ def view_of(appraisal: Appraisal, i: int) -> VesselView:
         },
         rules_status=rule_status(str(vessels.rules[i])),
     )
+
+
+def _due(appraisal: Appraisal, days: Floats, i: int) -> date | None:
+    """Give a due date; None where something is missing that could only bring it forward, unless it is past already."""
+    ahead = days[i] >= appraisal.bench.as_of_day
+    return None if ahead and appraisal.judged.due_uncertain[i] else _date(days, i)
 
 
 def _rows(appraisal: Appraisal, i: int) -> list[int]:

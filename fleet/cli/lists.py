@@ -123,6 +123,7 @@ def due(
     ] = None,
     as_of: AsOf = None,
     known_at: KnownAt = None,
+    units: Units = "si",
     database: Database = DEFAULT_DATABASE,
     as_json: AsJson = False,
 ) -> None:
@@ -140,13 +141,15 @@ def due(
         output.show(jsonout.due(made.appraisal, until))
     else:
         from fleet.reports import text
+        from fleet.tasks.printing import display
 
-        output.say(text.due(made.appraisal, until))
+        output.say(text.due(made.appraisal, until, display(units)))
 
 
 def gaps(
     as_of: AsOf = None,
     known_at: KnownAt = None,
+    units: Units = "si",
     database: Database = DEFAULT_DATABASE,
     as_json: AsJson = False,
 ) -> None:
@@ -164,8 +167,9 @@ def gaps(
         output.show(jsonout.gaps(made.appraisal, made.waiting))
     else:
         from fleet.reports import text
+        from fleet.tasks.printing import display
 
-        output.say(text.gaps(made.appraisal, made.waiting))
+        output.say(text.gaps(made.appraisal, made.waiting, display(units)))
 
 
 def derating(

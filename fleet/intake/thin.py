@@ -29,11 +29,15 @@ def thin_readings(block: Block, known: KnownRegister) -> list[dict[str, Any]]:
     -----
     The wall compared is the lesser of thickness and average, less a lining that does not count in strength,
     unless the reading is said not to include it. A location that is not on record is held against the figures
-    of its part.
+    of its part, an unknown part against the greatest required thickness of its vessel.
     """
     thickness, average = block.number("thickness"), block.number("average")
     vessels, parts, locations = block.text("vessel"), block.text("part"), block.text("location")
     days, includes = block.date("taken_on"), block.text("includes_lining")
+    of_vessel: dict[str, float] = {}
+    for (vessel, _), each in known.parts.items():
+        if each.required_thickness_mm > of_vessel.get(vessel, 0.0):
+            of_vessel[vessel] = each.required_thickness_mm
     found = []
     for row, (thick, mean) in enumerate(zip(thickness.tolist(), average.tolist(), strict=True)):
         if math.isnan(thick):
@@ -42,10 +46,11 @@ def thin_readings(block: Block, known: KnownRegister) -> list[dict[str, Any]]:
         location = known.locations.get((vessels[row], parts[row], locations[row]))
         against: KnownLocation | KnownPart | None = location or part
         if against is None:
-            continue
+            alert, required = math.nan, of_vessel.get(vessels[row], math.nan)
+        else:
+            alert, required = against.alert_thickness_mm, against.required_thickness_mm
         wall = min(thick, mean) if mean > 0 else thick
         wall -= _lining_to_take_off(part, includes[row])
-        alert, required = against.alert_thickness_mm, against.required_thickness_mm
         which = [name for name, limit in (("alert", alert), ("required", required)) if wall <= limit]
         if which:
             day = days[row]

@@ -102,11 +102,12 @@ def _radius(g: Geometry, inside_stays: bool) -> Floats:
     nominal = g.nominal_thickness_mm
     inside, outside = g.inside_diameter_mm / 2, g.outside_diameter_mm / 2
     hemispherical = g.of_shape("hemispherical head")
-    inner = np.where(np.isnan(inside), outside - nominal, inside)
+    # where both diameters are given and disagree, the larger radius, the lower pressure
+    inner = np.fmax(inside, outside - nominal)
     inner = np.where(hemispherical & ~np.isnan(g.crown_radius_mm), g.crown_radius_mm, inner)
     if inside_stays:
         return inner
-    outer = np.where(np.isnan(outside), inside + nominal, outside)
+    outer = np.fmax(outside, inside + nominal)
     return np.where(hemispherical, inner + nominal, outer)
 
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+import re
 from dataclasses import dataclass
 
 from fleet import units
@@ -36,6 +37,10 @@ class Figure:
         return NONE if self.value is None else f"{self.value:.{self.decimals}f}"
 
 
+_QUANTITY_OF = {"mm/year": "rate", "mm": "length", "MPa": "pressure"}
+_FIGURE = re.compile(r"(?<![\w.])(\d+(?:\.\d+)?) (mm/year|mm|MPa)(?![\w/])")
+
+
 class Figures:
     """Turn inside figures into printed ones: what the wall gives is rounded down, what is asked of it up.
 
@@ -53,6 +58,31 @@ class Figures:
 
     def __init__(self, display: units.Display) -> None:
         self.display = display
+
+    def told(self, text: str) -> str:
+        """Put the reader's unit in brackets behind every figure of a finding.
+
+        Parameters
+        ----------
+        text : str
+            What was found, its figures in mm, MPa and mm/year or as somebody wrote them [text].
+
+        Returns
+        -------
+        str
+            The same text; unchanged where the reader's units are those.
+
+        Examples
+        --------
+        >>> Figures(units.US).told("0.075 mm/year from nominal")
+        '0.075 mm/year (3.0 mil/year) from nominal'
+        """
+
+        def with_readers_unit(found: re.Match[str]) -> str:
+            quantity = _QUANTITY_OF[found.group(2)]
+            return f"{found.group(0)} ({self.display.text(quantity, float(found.group(1)))})"
+
+        return text if self.display is units.SI else _FIGURE.sub(with_readers_unit, text)
 
     def unit(self, quantity: str) -> str:
         """Give the unit of a quantity as it stands in a heading.

@@ -43,10 +43,13 @@ def measured_words(view: VesselView) -> str:
     Returns
     -------
     str
-        Headed ``measured parts only`` where some part was never measured, or lacks what its figures need.
+        Headed ``measured parts only`` where some part was never measured, ``known parts only`` where a measured one
+        lacks what its figures need.
     """
     count = f"{view.parts_known} of {view.parts_total}"
-    return count if view.parts_known >= view.parts_total else f"measured parts only: {count}"
+    if view.parts_known >= view.parts_total:
+        return count
+    return f"{'known' if view.parts_known < view.parts_measured else 'measured'} parts only: {count}"
 
 
 def speaks_for(view: VesselView) -> str:

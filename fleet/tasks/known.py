@@ -28,7 +28,6 @@ from fleet.tasks.columns import by_day
 from fleet.tasks.names import Names, fetch_names
 from fleet.tasks.reader import Reader
 from fleet.tasks.record import re_ratings
-from fleet.tasks.starting import STARTING_BASIS
 
 Standing = Literal["accepted", "queried", "voided", "past"]
 
@@ -71,7 +70,8 @@ def fetch_on_record(reader: Reader, *, required: bool = False) -> OnRecord:
     """
     inputs = fetch_inputs(reader)
     names = fetch_names(reader)
-    required_mm = required_thickness(inputs) if required else np.full(len(inputs.locations), np.nan)
+    rows = len(inputs.locations) + len(inputs.parts)
+    required_mm = required_thickness(inputs) if required else np.full(rows, np.nan)
     inspections, files = reader.rows(models.Inspection), reader.rows(models.SourceFile)
     tag = {entity: key[2] for entity, key in names.tags.items()}
     done = [
@@ -82,7 +82,7 @@ def fetch_on_record(reader: Reader, *, required: bool = False) -> OnRecord:
     ]
     register = KnownRegister(
         vessels=_vessels(inputs, _re_ratings(reader, tag), done),
-        parts=_parts(inputs),
+        parts=_parts(inputs, required_mm),
         locations=_locations(inputs, _baselines(reader, names), _errors(reader, inputs, names), required_mm),
         inspections=frozenset(done),
         files={
@@ -95,7 +95,7 @@ def fetch_on_record(reader: Reader, *, required: bool = False) -> OnRecord:
 
 
 def required_thickness(inputs: Inputs) -> Floats:
-    """Give the required thickness of every location, as far as what is on record lets it be known.
+    """Give the required thickness of every location and part, as far as what is on record lets it be known.
 
     Parameters
     ----------
@@ -105,12 +105,12 @@ def required_thickness(inputs: Inputs) -> Floats:
     Returns
     -------
     Floats
-        In the order of the inputs' locations; NaN where nothing of it is known. A reading at or below what is
-        known of it is thin, whatever else is missing [mm].
+        In the order of the inputs' locations, then of their parts; NaN where nothing of it is known. A reading at
+        or below what is known of it is thin, whatever else is missing [mm].
     """
     from fleet.appraisal.required import needs, vessel_pressures
 
-    known: Floats = needs(inputs, vessel_pressures(inputs)).known_mm[: len(inputs.locations)]
+    known: Floats = needs(inputs, vessel_pressures(inputs)).known_mm
     return known
 
 
@@ -155,7 +155,7 @@ def _vessels(
             pressure, day, basis = rated[tag]
             recorded["current_mawp_mpa"] = {pressure}
             recorded["current_mawp_from"] = {day}
-            recorded["current_mawp_basis"] = {basis} if basis != STARTING_BASIS else set()
+            recorded["current_mawp_basis"] = {basis}
         else:
             # Blank means nameplate, and a blank nameplate design pressure: that is what stands on record.
             nameplate = _number(table.nameplate_mawp_mpa[row])
@@ -192,8 +192,8 @@ def location_keys(inputs: Inputs) -> list[LocationKey]:
     ]
 
 
-def _parts(inputs: Inputs) -> dict[PartKey, KnownPart]:
-    table = inputs.parts
+def _parts(inputs: Inputs, required: Floats) -> dict[PartKey, KnownPart]:
+    table, own = inputs.parts, required[len(inputs.locations) :]
     return {
         key: KnownPart(
             shape=table.shape[row],
@@ -202,6 +202,7 @@ def _parts(inputs: Inputs) -> dict[PartKey, KnownPart]:
             lining_thickness_mm=float(table.lining_thickness_mm[row]),
             lining_counts_in_strength=table.lining_counts_in_strength[row],
             alert_thickness_mm=float(table.alert_thickness_mm[row]),
+            required_thickness_mm=float(own[row]),
             recorded={"state": {table.state[row] or "in service"}},
         )
         for row, key in enumerate(_part_keys(inputs))

@@ -9,6 +9,7 @@ from __future__ import annotations
 import datetime as dt
 import json
 import math
+import shutil
 from collections.abc import Callable, Mapping
 from pathlib import Path
 from typing import Any
@@ -188,8 +189,8 @@ def write_works(folder: Path) -> None:
         ("parts", parts),
         ("locations", locations),
         ("readings", readings),
-        ("relief", "device,vessel,set_pressure [psig],last_test_on,next_test_on\nPSV-1,CYL,203,2024-05-01,2027-05-01\n"),
-        ("inspections", "vessel,kind,done_on,extent,inspector,report\nCYL,internal,2025-01-01,part of it,J. Dow,R-1\n"),
+        ("relief", "device,vessel,set_pressure [psig],last_test_on,next_test_on\nPSV-1,CYL,203,2024-05-01,\n"),
+        ("inspections", "vessel,kind,done_on,extent,inspector\nCYL,internal,2025-01-01,wall,J. Dow\n"),
     ):  # fmt: skip
         (folder / f"{name}.csv").write_text(text, encoding="utf-8")
 
@@ -257,7 +258,7 @@ def test_figures_of_each_shape_are_those_of_the_hand_sum(tag: str, appraised: di
     by_cap = after(LOOKED, 10) <= after(LAST, interval)
     assert vessel["governing_due"] == (None if by_cap else {"part": "wall", "location": "01"})
     assert vessel["governing_life"] == vessel["governing_pressure"] == {"part": "wall", "location": "01"}
-    assert "cap" in vessel["carry_to_basis"] or vessel["carry_to_basis"] == "planned survey"
+    assert vessel["carry_to_basis"] == "planned survey"
 
 
 def test_a_location_says_its_walls_and_rates(works: Path) -> None:
@@ -329,9 +330,10 @@ def test_text_from_outside_starts_no_formula(works: Path, tmp_path: Path) -> Non
 # --- units, files, the record --------------------------------------------------------------------------------------
 
 
-@pytest.fixture
-def small(tmp_path: Path) -> Path:
-    """Give a database with one drum `007`, and nothing measured."""
+@pytest.fixture(scope="module")
+def drum(tmp_path_factory: pytest.TempPathFactory) -> Path:
+    """Make a database with one drum `007`, and nothing measured."""
+    tmp_path = tmp_path_factory.mktemp("drum")
     db = tmp_path / "small.db"
     assert fleet("new", db=db).returncode == 0
     (tmp_path / "v.csv").write_text(
@@ -349,6 +351,12 @@ def small(tmp_path: Path) -> Path:
     files = [tmp_path / name for name in ("v.csv", "p.csv", "l.csv")]
     assert fleet("register", "load", *files, db=db).returncode == 0
     return db
+
+
+@pytest.fixture
+def small(drum: Path, tmp_path: Path) -> Path:
+    """Give a copy of that database: one file is all of it."""
+    return Path(shutil.copy(drum, tmp_path / "small.db"))
 
 
 LENGTHS = {
@@ -387,16 +395,22 @@ def test_every_spelling_of_a_length_and_a_pressure(small: Path, tmp_path: Path) 
     )
 
 
-@pytest.mark.parametrize("unit", ["psia", "bara", "atm", "mm", ""])
-def test_a_pressure_that_is_not_gauge_or_has_no_unit_is_refused(
-    unit: str, small: Path, tmp_path: Path
-) -> None:
-    (tmp_path / "r.csv").write_text(f"device,vessel,set_pressure [{unit}]\nSV-1,007,100\n")
-    [fault] = document("register", "load", tmp_path / "r.csv", db=small, code=1)["faults"]
-    assert set(fault) == {"code", "where", "found", "remedy"}
-    assert "cell C1" in fault["where"]
-    expected = {"psia": "absolute pressure", "bara": "absolute pressure", "": "missing unit"}
-    assert fault["code"] == expected.get(unit, "unknown unit")
+def test_a_pressure_that_is_not_gauge_or_has_no_unit_is_refused(small: Path, tmp_path: Path) -> None:
+    codes = {
+        "psia": "absolute pressure",
+        "bara": "absolute pressure",
+        "atm": "unknown unit",
+        "mm": "unknown unit",
+        "": "missing unit",
+    }
+    files = [tmp_path / f"r{place}.csv" for place in range(len(codes))]
+    for file, unit in zip(files, codes, strict=True):
+        file.write_text(f"device,vessel,set_pressure [{unit}]\nSV-{file.stem},007,100\n")
+    faults = document("register", "load", *files, db=small, code=1)["faults"]
+    assert [(fault["where"], fault["code"]) for fault in faults] == [
+        (f"{file.name}, cell C1", code) for file, code in zip(files, codes.values(), strict=True)
+    ]
+    assert all(set(fault) == {"code", "where", "found", "remedy"} for fault in faults)
 
 
 HEADER = "vessel,part,location,taken_on,thickness [mm]\n"
@@ -411,9 +425,6 @@ def test_tags_are_text_and_a_refused_file_still_tells_the_thin_reading(small: Pa
     assert [fault["code"] for fault in told["faults"]] == ["unknown vessel"] * 2 + ["date in the future"]
     assert [(line["location"], line["thickness_mm"]) for line in told["thin"]] == [("1", 3.0)]
     assert told["loaded"] == 0
-    printed = fleet("survey", "load", file, db=small)
-    assert printed.returncode == 1
-    assert printed.stdout.startswith("Thin: 1 reading")
 
 
 def test_parked_rows_wait_once_and_the_same_file_again_changes_nothing(small: Path, tmp_path: Path) -> None:
@@ -421,10 +432,9 @@ def test_parked_rows_wait_once_and_the_same_file_again_changes_nothing(small: Pa
     file.write_text(f"{HEADER}007,shell,1,2020-01-01,8\n007,shell,2,2099-01-01,12\n")
     dry = document("survey", "load", file, "--park-bad-rows", "--dry-run", db=small)
     assert (dry["loaded"], dry["parked"]) == (1, 1)
-    head = document("journal", "verify", db=small)["journal_head"]
     assert document("survey", "load", file, "--park-bad-rows", db=small)["parked"] == 1
     written = document("journal", "verify", db=small)
-    assert written["journal_head"] != head
+    assert (written["whole"], written["entries"]) == (True, 2)
     assert document("survey", "load", file, "--park-bad-rows", db=small)["loaded"] == 0
     again = document("journal", "verify", db=small)
     assert (again["whole"], again["journal_head"]) == (True, written["journal_head"])
@@ -451,30 +461,26 @@ def test_a_correction_holds_from_the_beginning_and_a_change_from_its_day(small: 
     assert fleet("register", "load", tmp_path / "c.csv", db=small).returncode == 0
     (tmp_path / "d.csv").write_text(columns + "007,shell,cylinder,10\n")
     assert fleet("register", "load", tmp_path / "d.csv", "--from", "2024-01-01", db=small).returncode == 0
-    assert required("2019-01-01") == 9
     assert required("2023-12-31") == 9
     assert required("2024-01-01") == 10
     hoop = 1.5 * 764 / (138 + 0.4 * 1.5)
     assert required("2026-12-01", "--known-at", before) == pytest.approx(hoop, rel=1e-9)
 
 
-@pytest.mark.parametrize(
-    ("column", "value", "command"),
-    [
+def test_a_starting_value_that_differs_is_a_fault_that_names_the_command(small: Path, tmp_path: Path) -> None:
+    asked = (
         ("current_mawp [MPa]", "1.7", "fleet decide"),
         ("last_internal_on", "2023-01-01", "fleet inspection add"),
         ("state", "retired", "fleet state set"),
-    ],
-)
-def test_a_starting_value_that_differs_is_a_fault_that_names_the_command(
-    column: str, value: str, command: str, small: Path, tmp_path: Path
-) -> None:
-    (tmp_path / "x.csv").write_text(
-        f"vessel,rules,design_code,in_service_on,nameplate_mawp [MPa],{column}\n007,api510,asme8-1,2010-01-01,2,{value}\n"
     )
-    [fault] = document("register", "load", tmp_path / "x.csv", db=small, code=1)["faults"]
-    assert fault["code"] == "differs from the record"
-    assert command in fault["remedy"]
+    for column, value, command in asked:
+        (tmp_path / "x.csv").write_text(
+            f"vessel,rules,design_code,in_service_on,nameplate_mawp [MPa],{column}\n"
+            f"007,api510,asme8-1,2010-01-01,2,{value}\n"
+        )
+        [fault] = document("register", "load", tmp_path / "x.csv", db=small, code=1)["faults"]
+        assert fault["code"] == "differs from the record"
+        assert command in fault["remedy"]
 
 
 def test_exit_codes_and_one_document_also_when_refused(small: Path, tmp_path: Path) -> None:
@@ -483,10 +489,8 @@ def test_exit_codes_and_one_document_also_when_refused(small: Path, tmp_path: Pa
     for words, db, code in (
         (("show", "7"), small, 1),
         (("appraise", "007", "8"), small, 1),
-        (("new",), small, 1),
         (("show", "007", "--carry-to", "2020-01-01", *AS_OF), small, 2),
         (("show", "007"), tmp_path / "absent.db", 3),
-        (("show", "007"), tmp_path, 3),
         (("show", "007"), text, 3),
     ):
         done = fleet(*words, "--json", db=db)
@@ -500,7 +504,6 @@ def test_exit_codes_and_one_document_also_when_refused(small: Path, tmp_path: Pa
     for usage in (
         ("show",),
         ("show", "007", "--as-of", "2026-13-01"),
-        ("show", "007", "--units", "x"),
         ("none",),
     ):
         assert fleet(*usage, db=small).returncode == 2, usage

@@ -13,6 +13,7 @@ from fleet.reports.known import KNOWN_ONLY, speaks_for
 from fleet.reports.source import AppraisalLike, blocks
 from fleet.reports.story import story, the_sum
 from fleet.reports.text.layout import Head, paragraph, strokes, table, title
+from fleet.reports.text.parts import notice_lines
 from fleet.words import Notice
 
 
@@ -110,7 +111,7 @@ def derating(appraisal: AppraisalLike, written_to: str, display: units.Display =
     )
 
 
-def due(appraisal: AppraisalLike, until: date | None = None) -> str:
+def due(appraisal: AppraisalLike, until: date | None = None, display: units.Display = units.SI) -> str:
     """Write what is to be inspected when: overdue first, then by the earlier of the two dates.
 
     Parameters
@@ -119,12 +120,14 @@ def due(appraisal: AppraisalLike, until: date | None = None) -> str:
         The appraisal [-].
     until : date, optional
         Leave out what falls due after this day [date].
+    display : units.Display
+        Units and decimals of the reader [-].
 
     Returns
     -------
     str
     """
-    views = appraisal.views()
+    views, figures = appraisal.views(), Figures(display)
     listed = in_due_order(views, until)
     retired = sum(view.block == words.RETIRED for view in views)
     left_out = len(views) - len(listed) - retired
@@ -134,6 +137,7 @@ def due(appraisal: AppraisalLike, until: date | None = None) -> str:
         Head("internal or\non-stream due"),
         Head("external\ndue"),
         Head("governed by", wraps=True),
+        Head(f"carries then\n[{figures.unit('pressure')}]", right=True),
         Head("standing", wraps=True),
         Head("flags", wraps=True),
     ]
@@ -144,6 +148,7 @@ def due(appraisal: AppraisalLike, until: date | None = None) -> str:
             _day(view.internal_due_on),
             _day(view.external_due_on),
             _governed_by(view),
+            str(figures.carries(view.projected_mawp_mpa)),
             view.standing,
             ", ".join(view.flags),
         ]
@@ -156,7 +161,7 @@ def due(appraisal: AppraisalLike, until: date | None = None) -> str:
     return _page([*lines, f"Journal head {appraisal.journal_head}"])
 
 
-def gaps(appraisal: AppraisalLike, waiting: Iterable[Notice] = ()) -> str:
+def gaps(appraisal: AppraisalLike, waiting: Iterable[Notice] = (), display: units.Display = units.SI) -> str:
     """Write what was never measured or recorded, vessel by vessel.
 
     Parameters
@@ -165,12 +170,14 @@ def gaps(appraisal: AppraisalLike, waiting: Iterable[Notice] = ()) -> str:
         The appraisal [-].
     waiting : iterable of Notice
         Gaps that belong to no vessel, such as parked rows [-].
+    display : units.Display
+        Units and decimals of the reader [-].
 
     Returns
     -------
     str
     """
-    parked = list(waiting)
+    parked, figures = list(waiting), Figures(display)
     views = appraisal.views()
     lines = [
         *title("What was never measured or recorded", f"as of {appraisal.as_of.isoformat()}"),
@@ -179,9 +186,13 @@ def gaps(appraisal: AppraisalLike, waiting: Iterable[Notice] = ()) -> str:
     ]
     for view in views:
         if view.gaps:
-            lines += [f"{strokes(view.standing)} {view.vessel}   {view.standing}", *_notices(view.gaps), ""]
+            lines += [
+                f"{strokes(view.standing)} {view.vessel}   {view.standing}",
+                *notice_lines(view.gaps, figures),
+                "",
+            ]
     if parked:
-        lines += ["     Waiting rows", *_notices(parked), ""]
+        lines += ["     Waiting rows", *notice_lines(parked, figures), ""]
     total = sum(len(view.gaps) for view in views)
     with_gaps = sum(bool(view.gaps) for view in views)
     said = f"{total} gaps on {with_gaps} of {len(views)} vessels"
@@ -254,14 +265,6 @@ def _due_sum(
     said += f" + {left_out} due after {until.isoformat()}" if until and left_out else ""
     said += f" + {retired} retired" if retired else ""
     return f"{said} = {total}."
-
-
-def _notices(notices: Iterable[Notice]) -> list[str]:
-    lines: list[str] = []
-    for notice in notices:
-        said = f"{notice.where}: {notice.code} ({notice.found}). To do: {notice.remedy}."
-        lines += paragraph(said, indent=5, hanging=2)
-    return lines
 
 
 def _day(day: date | None) -> str:

@@ -2,18 +2,41 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterable, Sequence
 
 from fleet import words
 from fleet.appraisal.views import LocationView, PartView, VesselView
 from fleet.reports import cite
 from fleet.reports.figures import NONE, Figures
 from fleet.reports.text.layout import Head, marked, paragraph, table
+from fleet.words import Notice
 
 UNSEEN = "loss below what readings can show"
 """Code of the doubt that a loss is too small for the readings [text]."""
 SAME = 1e-9
 """Walls closer than this are the same [mm]."""
+
+
+def notice_lines(notices: Iterable[Notice], figures: Figures) -> list[str]:
+    """Write doubts or gaps, each with its place and what to do.
+
+    Parameters
+    ----------
+    notices : iterable of Notice
+        The doubts or gaps [-].
+    figures : Figures
+        How figures are printed [-].
+
+    Returns
+    -------
+    list of str
+        Indented lines [text].
+    """
+    lines: list[str] = []
+    for notice in notices:
+        said = f"{notice.where}: {notice.code} ({figures.told(notice.found)}). To do: {notice.remedy}."
+        lines += paragraph(said, indent=5, hanging=2)
+    return lines
 
 
 def parts_and_locations(view: VesselView, figures: Figures) -> list[str]:
@@ -51,7 +74,7 @@ def _part_line(part: PartView, figures: Figures) -> str:
     said += f"; MAWP today {today}, projected {then}"
     pressure_by = cite.pressure_rests_on(part)
     if part.mawp_today_mpa is not None and pressure_by and pressure_by != rests_on:
-        said += f", by {pressure_by}"
+        said += f", by {'the lesser of ' if '; ' in pressure_by else ''}{pressure_by.replace('; ', ' and ')}"
     return said if part.measured else f"{said}; never measured"
 
 

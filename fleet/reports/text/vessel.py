@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
-
 from fleet import units, words
 from fleet.appraisal.views import Place, VesselView, WaysOut
 from fleet.reports.figures import NONE, Figures
@@ -17,8 +15,7 @@ from fleet.reports.sentences import (
     relief_sentences,
 )
 from fleet.reports.text.layout import Head, marked, paragraph, table, title
-from fleet.reports.text.parts import parts_and_locations
-from fleet.words import Notice
+from fleet.reports.text.parts import notice_lines, parts_and_locations
 
 
 def show(view: VesselView, display: units.Display = units.SI) -> str:
@@ -50,8 +47,8 @@ def show(view: VesselView, display: units.Display = units.SI) -> str:
         *_headed("Ways out", _ways_out(view, figures)),
         *_headed("Gauge again", _re_gauge(view)),
         *parts_and_locations(view, figures),
-        *_headed("Doubts", _notices(view.doubts)),
-        *_headed("Gaps", _notices(view.gaps)),
+        *_headed("Doubts", notice_lines(view.doubts, figures)),
+        *_headed("Gaps", notice_lines(view.gaps, figures)),
         f"Journal head {view.journal_head}",
     ]
     return "\n".join(lines) + "\n"
@@ -220,14 +217,6 @@ def _re_gauge(view: VesselView) -> list[str]:
     by = f" by {view.re_gauge_by.isoformat()}" if view.re_gauge_by else ""
     places = "; ".join(str(place) for place in view.re_gauge)
     return paragraph(f"{places}{by}.", indent=5)
-
-
-def _notices(notices: Sequence[Notice]) -> list[str]:
-    lines: list[str] = []
-    for notice in notices:
-        said = f"{notice.where}: {notice.code} ({notice.found}). To do: {notice.remedy}."
-        lines += paragraph(said, indent=5, hanging=2)
-    return lines
 
 
 def _day(day: object) -> str:

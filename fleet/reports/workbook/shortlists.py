@@ -190,7 +190,7 @@ def draw_re_gauge(book: Workbook, appraisal: AppraisalLike, figures: Figures, st
     page.finish()
 
 
-def draw_doubts(book: Workbook, appraisal: AppraisalLike, _figures: Figures, stamp: Stamp) -> None:
+def draw_doubts(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stamp) -> None:
     """Draw every doubt that stands open.
 
     Parameters
@@ -199,16 +199,16 @@ def draw_doubts(book: Workbook, appraisal: AppraisalLike, _figures: Figures, sta
         The workbook [-].
     appraisal : AppraisalLike
         The appraisal [-].
-    _figures : Figures
-        Not needed: a doubt says its figures in words [-].
+    figures : Figures
+        How figures are printed [-].
     stamp : Stamp
         What stands on every printed page [-].
     """
     note = "Doubtful data that was loaded and stays visible until cleared. Doubt never improves a figure."
-    _draw_notices(book, appraisal, stamp, ("Doubts", note), lambda view: view.doubts)
+    _draw_notices(book, appraisal, figures, stamp, ("Doubts", note), lambda view: view.doubts)
 
 
-def draw_gaps(book: Workbook, appraisal: AppraisalLike, _figures: Figures, stamp: Stamp) -> None:
+def draw_gaps(book: Workbook, appraisal: AppraisalLike, figures: Figures, stamp: Stamp) -> None:
     """Draw everything that should have been measured or recorded and was not.
 
     Parameters
@@ -217,18 +217,19 @@ def draw_gaps(book: Workbook, appraisal: AppraisalLike, _figures: Figures, stamp
         The workbook [-].
     appraisal : AppraisalLike
         The appraisal [-].
-    _figures : Figures
-        Not needed: a gap has no figure [-].
+    figures : Figures
+        How figures are printed [-].
     stamp : Stamp
         What stands on every printed page [-].
     """
     note = "What should have been measured or recorded and was not."
-    _draw_notices(book, appraisal, stamp, ("Gaps", note), lambda view: view.gaps)
+    _draw_notices(book, appraisal, figures, stamp, ("Gaps", note), lambda view: view.gaps)
 
 
 def _draw_notices(
     book: Workbook,
     appraisal: AppraisalLike,
+    figures: Figures,
     stamp: Stamp,
     titled: tuple[str, str],
     of: Callable[[VesselView], tuple[Notice, ...]],
@@ -249,7 +250,8 @@ def _draw_notices(
         for notice in of(view):
             drawn += 1
             page.line(
-                [view.vessel, notice.code, notice.where, notice.found, notice.remedy], standing=view.standing
+                [view.vessel, notice.code, notice.where, figures.told(notice.found), notice.remedy],
+                standing=view.standing,
             )
     if not drawn:
         page.none()

@@ -112,3 +112,68 @@ def test_groups_without_rows_have_nothing() -> None:
     assert place_of_least(values, group, 4).tolist() == [0, -1, 2, -1]
     assert any_by(np.array([True, False, True]), group, 4).tolist() == [True, False, True, False]
     assert count_by(np.array([True, True, False]), group, 4).tolist() == [2, 0, 0, 0]
+
+
+BLANKS = ("allowable_stress_mpa", "inside_diameter_mm", "nominal_thickness_mm", "joint_efficiency_long",
+          "joint_efficiency_circ", "static_head_mpa")  # fmt: skip
+
+
+@pytest.mark.parametrize("blank", BLANKS)
+def test_no_blank_datum_moves_a_due_date_later(blank: str) -> None:
+    """The whole vessel is due by its half life; with a datum missing the date is unknown, or past all the same."""
+
+    def fleet(**changes: float) -> Fleet:
+        made = Fleet()
+        made.vessel(inspected="2022-01-01", nameplate_mawp_mpa=1.8, design_pressure_mpa=1.8)
+        made.part(**changes)
+        made.location()
+        made.read(0, ("2016-01-01", 13.0), ("2021-01-01", 11.5), ("2025-01-01", 9.9))
+        return made
+
+    whole, lacking = fleet().view(), fleet(**{blank: math.nan}).view()
+    # 1.8·514/(100 + 0.4·1.8) = 9.186; (9.9 − 9.186)/0.4 = 1.785 years, under four: the full life
+    assert whole.internal_due_on == date(2026, 10, 15)
+    for before, after in (
+        (whole.internal_due_on, lacking.internal_due_on),
+        (whole.external_due_on, lacking.external_due_on),
+    ):
+        assert after is None or (before is not None and after <= before)
+    assert lacking.internal_interval_years is None
+    assert "due date not known" in codes(lacking.gaps)
+
+
+def test_a_due_date_that_is_past_at_the_latest_is_told_and_overdue_all_the_same() -> None:
+    fleet = one_cylinder(("2010-01-01", 13.0), ("2015-01-01", 12.9), inspected="2010-01-01")
+    fleet.parts[0]["allowable_stress_mpa"] = math.nan
+    view = fleet.view()
+    assert view.internal_due_on == date(2020, 1, 1)
+    assert "overdue" in view.flags
+
+
+def test_of_two_diameters_that_disagree_the_worse_counts_and_is_doubted() -> None:
+    def view(**changes: float) -> tuple[float | None, list[str]]:
+        fleet = Fleet()
+        fleet.vessel()
+        fleet.part(**changes)
+        fleet.location()
+        fleet.read(0, ("2015-01-01", 13.0), ("2025-01-01", 12.9))
+        seen = fleet.view()
+        return part_of(seen).required_thickness_mm, codes(seen.doubts)
+
+    agreeing, quiet = view(inside_diameter_mm=1500.0, outside_diameter_mm=1528.0)
+    lower, said = view(inside_diameter_mm=1500.0, outside_diameter_mm=1510.0)
+    higher, said_too = view(inside_diameter_mm=1500.0, outside_diameter_mm=1600.0)
+    assert "diameters disagree" not in quiet
+    assert "diameters disagree" in said
+    assert "diameters disagree" in said_too
+    assert lower == pytest.approx(agreeing)
+    assert agreeing is not None
+    assert higher is not None
+    assert higher > agreeing
+
+
+def test_a_planned_survey_that_is_past_is_as_good_as_none() -> None:
+    fleet = one_cylinder(("2010-01-01", 13.0), ("2020-01-01", 12.9), next_survey_day=ordinal("2020-01-01"))
+    assert [gap.found for gap in fleet.view().gaps if gap.code == "no planned survey"] == [
+        "next_survey_on 2020-01-01 is past"
+    ]

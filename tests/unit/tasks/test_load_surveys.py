@@ -74,6 +74,19 @@ def test_thin_readings_are_told_when_the_file_is_refused(
     assert entries() == 1
 
 
+def test_a_thin_reading_at_a_location_or_part_that_is_not_on_record_is_told(
+    works: Engine, survey: Survey
+) -> None:
+    # V-101 needs 2.5·514/(138 + 0.4·2.5) = 9.24 mm
+    loaded = survey(
+        f"{HEAD}\nV-101,shell,N7,2024-01-01,9.0\nV-101,bottom,1,2024-01-01,9.0\nV-101,bottom,2,2024-01-01,9.5\n"
+    )
+    assert [(thin["part"], thin["location"], thin["which"]) for thin in loaded.thin] == [
+        ("shell", "N7", "alert and required"),
+        ("bottom", "1", "required"),
+    ]
+
+
 def test_the_same_file_again_changes_nothing_and_says_so(
     surveyed: Engine, tmp_path: Path, entries: Count
 ) -> None:
