@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from datetime import date
+from typing import Any
 
 import numpy as np
 import pytest
@@ -122,7 +123,7 @@ BLANKS = ("allowable_stress_mpa", "inside_diameter_mm", "nominal_thickness_mm", 
 def test_no_blank_datum_moves_a_due_date_later(blank: str) -> None:
     """The whole vessel is due by its half life; with a datum missing the date is unknown, or past all the same."""
 
-    def fleet(**changes: float) -> Fleet:
+    def fleet(**changes: Any) -> Fleet:
         made = Fleet()
         made.vessel(inspected="2022-01-01", nameplate_mawp_mpa=1.8, design_pressure_mpa=1.8)
         made.part(**changes)
@@ -151,7 +152,7 @@ def test_a_due_date_that_is_past_at_the_latest_is_told_and_overdue_all_the_same(
 
 
 def test_of_two_diameters_that_disagree_the_worse_counts_and_is_doubted() -> None:
-    def view(**changes: float) -> tuple[float | None, list[str]]:
+    def view(**changes: Any) -> tuple[float | None, list[str]]:
         fleet = Fleet()
         fleet.vessel()
         fleet.part(**changes)
