@@ -14,7 +14,7 @@ import typer
 
 import fleet
 from fleet.cli import database, journal, lists, output, register, rules, survey
-from fleet.errors import DatabaseProblem, FleetError, OurFault, Refused
+from fleet.errors import DatabaseProblem, FleetError, OurFault, Refused, UsageProblem
 from fleet.words import CAUTION
 
 app = typer.Typer(
@@ -66,14 +66,19 @@ def run(arguments: Sequence[str] | None = None) -> None:
                 errors="replace"
             )  # a terminal without a character prints '?', never a traceback
     output.begin(as_json="--json" in words)
+    code: object = 0
     try:
-        app(args=words, prog_name="fleet")
+        code = app(args=words, prog_name="fleet", standalone_mode=False)
     except FleetError as problem:
         _end(problem)
     except Exception as problem:  # the last net: whatever else happens is told in three parts
         if os.environ.get("FLEET_DEBUG"):
             raise
+        if type(problem).__name__ == "NoArgsIsHelpError":  # a group named alone: its commands are the answer
+            typer.echo(str(problem), err=True)
+            raise SystemExit(UsageProblem.exit_code) from None
         _end(_translated(problem))
+    raise SystemExit(code if isinstance(code, int) else 0)
 
 
 def _end(problem: FleetError) -> None:
@@ -85,6 +90,11 @@ def _end(problem: FleetError) -> None:
 def _translated(problem: Exception) -> FleetError:
     """Give a stray exception its three parts."""
     said = " ".join(str(problem).split())[:200] or type(problem).__name__
+    if callable(told := getattr(problem, "format_message", None)):  # the option parser's own
+        command = getattr(getattr(problem, "ctx", None), "command_path", "fleet")
+        return UsageProblem(command, str(told()).rstrip("."), f"see '{command} --help'")
+    if type(problem).__name__ == "Abort":  # what the option parser makes of Ctrl-C
+        return Refused("fleet", "stopped by you", "nothing was half written; run the command again")
     if type(problem).__module__.startswith("sqlalchemy"):
         return DatabaseProblem(
             "the database", said, "check that it is whole, writable and not in use; then try again"
