@@ -11,10 +11,10 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fleet import words
+from fleet.intake.cells import Cell, Place, is_blank, show
 from fleet.intake.headings import Layout
 from fleet.intake.known import LocationKey
 from fleet.intake.results import ParkedRow, Row, Value
-from fleet.intake.sheets import Cell, Place, is_blank, show
 from fleet.intake.tables import Column
 from fleet.words import Notice
 

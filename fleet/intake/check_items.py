@@ -11,9 +11,9 @@ import numpy as np
 
 from fleet.intake import compare, tables
 from fleet.intake.block import Block
+from fleet.intake.cells import show
 from fleet.intake.doubt_numbers import note_against_nominal
 from fleet.intake.known import KnownRegister, Recordings
-from fleet.intake.sheets import show
 from fleet.units import INTERNAL
 
 _PAST_DATES: dict[str, tuple[str, ...]] = {

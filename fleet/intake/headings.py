@@ -9,7 +9,7 @@ from functools import lru_cache
 
 from fleet import words
 from fleet.intake import tables
-from fleet.intake.sheets import Cell, Sheet, clean, is_blank, letters, show
+from fleet.intake.cells import Cell, Sheet, clean, is_blank, letters, show
 from fleet.intake.tables import Column
 from fleet.units import Unit, UnitFault, find_unit
 from fleet.words import Notice

@@ -10,8 +10,8 @@ import numpy as np
 from fleet import words
 from fleet.intake import tables
 from fleet.intake.block import Block, Floats
+from fleet.intake.cells import Cell, Sheet, clean, is_blank, show
 from fleet.intake.headings import Heading, Layout
-from fleet.intake.sheets import Cell, Sheet, clean, is_blank, show
 from fleet.intake.tables import Column
 from fleet.units import INTERNAL, Unit, parse_number, to_internal
 

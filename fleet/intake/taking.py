@@ -10,10 +10,11 @@ from pathlib import Path
 from fleet import errors, words
 from fleet.intake import tables
 from fleet.intake.block import Block
+from fleet.intake.cells import Book, Sheet, is_blank, show
 from fleet.intake.headings import identify
 from fleet.intake.parse import parse_block
 from fleet.intake.results import FileIn, ParkedRow, Typed
-from fleet.intake.sheets import Book, Sheet, is_blank, read_file, show
+from fleet.intake.sheets import read_file
 from fleet.words import Notice
 
 

@@ -13,7 +13,7 @@ import zipfile
 import zlib
 from collections.abc import Iterator
 
-from fleet.intake.sheets import Cell, Place, Sheet, refusal
+from fleet.intake.cells import Cell, Place, Sheet, refusal
 
 _MOST_BYTES = 2**31
 _MOST_CELLS = 50_000_000
