@@ -148,10 +148,11 @@ def upgrade(engine: Engine, *, to: str = "head", folder: Path | None = None) -> 
     Raises
     ------
     fleet.errors.DatabaseProblem
-        When the database cannot be written.
+        When the database cannot be written, or bears a revision that this version does not know.
     """
     from alembic import command
     from alembic.config import Config
+    from alembic.util import CommandError
 
     config = Config()
     # The value is read through ConfigParser, in which a percent sign has a meaning of its own.
@@ -162,7 +163,14 @@ def upgrade(engine: Engine, *, to: str = "head", folder: Path | None = None) -> 
         with conn.begin():
             lock(conn)
             config.attributes["connection"] = conn
-            command.upgrade(config, to)
+            try:
+                command.upgrade(config, to)
+            except CommandError as error:
+                raise DatabaseProblem(
+                    place(engine),
+                    f"its schema is not one that this version can bring up: {error}",
+                    "open it with the version that made it, or go back to a backup",
+                ) from error
 
 
 def prepare(conn: Connection) -> None:

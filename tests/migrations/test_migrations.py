@@ -12,7 +12,7 @@ from pathlib import Path
 from typing import Any
 
 import pytest
-from sqlalchemy import Engine, inspect
+from sqlalchemy import Engine, inspect, text
 
 from fleet import errors
 from fleet.store import facts, guard, journal, migrate
@@ -287,3 +287,11 @@ def test_alembic_itself_works_from_the_checkout(blank_address: str) -> None:
     done = _alembic("upgrade", "head", "--sql", database=blank_address)
     assert done.returncode != 0
     assert "run without --sql" in done.stderr
+
+
+def test_a_revision_that_nobody_knows_is_told_and_left_alone(engine: Engine) -> None:
+    with engine.begin() as conn:
+        conn.execute(text("UPDATE alembic_version SET version_num = '0000'"))
+    with pytest.raises(errors.DatabaseProblem, match="not one that this version can bring up"):
+        migrate.upgrade(engine)
+    assert migrate.current(engine) == "0000"
