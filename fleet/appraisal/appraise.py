@@ -135,21 +135,6 @@ class Appraisal:
     def _views(self) -> tuple[VesselView, ...]:
         return tuple(self.vessel(i) for i in range(self.count))
 
-    def index_of(self, tag: str) -> int:
-        """Give the index of a vessel by its tag, -1 where there is none.
-
-        Parameters
-        ----------
-        tag : str
-            Tag of the vessel [text].
-
-        Returns
-        -------
-        int
-        """
-        found = np.flatnonzero(self.inputs.vessels.tag == tag)
-        return int(found[0]) if len(found) else -1
-
     def timetable(self, years: int = 10) -> Timetable:
         """Give the MAWP of every vessel for the coming years.
 

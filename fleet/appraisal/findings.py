@@ -96,13 +96,13 @@ def _missing(book: NoteBook, bench: Bench, judged: Judged, vacuum: Bools) -> Non
         bench.trusted
         & ~need.given_shape[:n]
         & ~np.isnan(judged.projected_mm)
-        & np.isnan(judged.projected_mpa)
+        & (np.isnan(judged.projected_mpa) | np.isnan(judged.mawp_today_mpa))
     )
     book.add(
         "outside formula limits",
         "location",
         no_form,
-        "the projected wall is outside the limits of every form",
+        "the wall of today or the projected wall is outside the limits of every form",
     )
     short = need.given_shape[:n] & (found.now.wall_used_mm < need.known_mm[:n])
     book.add(
@@ -215,7 +215,7 @@ def _proportions(book: NoteBook, bench: Bench) -> None:
 
 def _vessels(book: NoteBook, bench: Bench, judged: Judged) -> None:
     inputs, seen, vessels = bench.inputs, bench.seen, bench.inputs.vessels
-    kept = ~np.isin(vessels.state, ("retired",))
+    kept = np.asarray(vessels.state != "retired", dtype=np.bool_)
     book.add(
         "nameplate blank",
         "vessel",
@@ -223,6 +223,16 @@ def _vessels(book: NoteBook, bench: Bench, judged: Judged) -> None:
         "the design pressure is taken for it",
     )
     book.add("no inspection on record", "vessel", kept & seen.no_internal, "counted from in-service")
+    unsaid = np.asarray(inputs.inspections.extent == "", dtype=np.bool_)
+    told = np.asarray(inputs.inspections.extent != "", dtype=np.bool_)
+    said = set(
+        zip(inputs.inspections.vessel[told].tolist(), inputs.inspections.done_day[told].tolist(), strict=True)
+    )
+    silent = np.zeros(len(vessels), dtype=np.bool_)
+    for row in np.flatnonzero(unsaid).tolist():
+        key = (int(inputs.inspections.vessel[row]), float(inputs.inspections.done_day[row]))
+        silent[key[0]] |= key not in said and key[1] <= bench.as_of_day
+    book.add("inspection extent blank", "vessel", kept & silent, "the extent of an inspection is blank")
     book.add("no external on record", "vessel", kept & seen.no_external, "counted from in-service")
     past = kept & (vessels.next_survey_day < bench.as_of_day)
     book.add("no planned survey", "vessel", past, lambda row: (

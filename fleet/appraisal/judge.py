@@ -237,7 +237,9 @@ def judge(bench: Bench, plan: Planning) -> Judged:
     retirement_place = place_of_least(exact, vessel_of, vessels)
     cap_years = load_rule_set("choices")["running_out_cap_years"]
     horizon = bench.as_of_day + whole_days(np.minimum(2 * due.interval_years, cap_years))
-    standing = _standings(bench, today, projected, capped[:count], retirement, horizon[vessel_of])
+    standing = _standings(
+        bench, today, projected, today_mpa[:count], capped[:count], retirement, horizon[vessel_of]
+    )
     worst = np.full(vessels, HELD, dtype=np.int64)
     np.minimum.at(worst, vessel_of[found.live], standing[found.live])
     worst = np.where(bench.withheld, np.minimum(worst, NONE), worst)
@@ -270,7 +272,13 @@ def judge(bench: Bench, plan: Planning) -> Judged:
 
 
 def _standings(
-    bench: Bench, today: Floats, projected: Floats, mawp: Floats, retirement: Floats, horizon: Floats
+    bench: Bench,
+    today: Floats,
+    projected: Floats,
+    today_mpa: Floats,
+    mawp: Floats,
+    retirement: Floats,
+    horizon: Floats,
 ) -> Ints:
     """Give the standing of every location from what is known of it, worst first."""
     count = len(today)
@@ -282,7 +290,7 @@ def _standings(
     used = today < known
     short = (projected < known * (1 - TOLERANCE)) | (mawp < current * (1 - TOLERANCE))
     # a location never read is a gap; its part is judged by its others, or not at all where none was read
-    unknown = ~np.isnan(wall) & (~bench.trusted | np.isnan(today) | np.isnan(mawp))
+    unknown = ~np.isnan(wall) & (~bench.trusted | np.isnan(today_mpa) | np.isnan(mawp))
     running = retirement <= horizon
     return np.select(
         [below, at, used, short, unknown, running], [BELOW, AT, USED, SHORT, NONE, RUNNING], HELD

@@ -131,7 +131,7 @@ def thinned(inputs: Inputs, clock: ServiceClock, as_of_day: float) -> Thinned:
     present = span[usable] == index.number[at]
     metal_now = index.new_metal()
     same_metal = metal[usable] == metal_now[at]
-    rests = seen.counted & same_metal & (read.wall_mm[usable] <= now.wall_used_mm[at])
+    rests = seen.counted & same_metal & (read.least_mm[usable] <= now.wall_used_mm[at])
     last = (
         np.where(now.last_reading >= 0, usable[np.maximum(now.last_reading, 0)], -1)
         if len(usable)
@@ -152,7 +152,8 @@ def thinned(inputs: Inputs, clock: ServiceClock, as_of_day: float) -> Thinned:
         visits=visits(inputs, read, gave_wall, index, live),
         deduct_mm=_at_last(read.deduct_mm, last),
         lining_not_told=(_at_last(read.not_told.astype(np.float64), last) > 0)
-        | any_by(rests & read.not_told[usable], at, count),
+        | any_by(rests & read.not_told[usable], at, count)
+        | any_by(seen.counted & same_metal & read.mixed[usable], at, count),
         lining_unknown=(_at_last(read.unknown.astype(np.float64), last) > 0)
         | any_by(rests & read.unknown[usable], at, count),
         queried_low=any_by(queried & seen.counted & same_metal, at, count),
@@ -181,7 +182,8 @@ def _chosen(inputs: Inputs, as_of_day: float) -> Chosen:
     )
     nearness = (made.part[rows] >= 0).astype(np.int64) + (made.location[rows] >= 0)
     vessel_of = inputs.parts.vessel[inputs.locations.part]
-    for row in rows[np.lexsort((made.decided_day[rows], nearness))].tolist():
+    in_time = ~(made.review_day[rows] <= as_of_day)  # one whose review is past hides none that stands
+    for row in rows[np.lexsort((made.decided_day[rows], nearness, in_time))].tolist():
         if made.location[row] >= 0:
             here = np.array([made.location[row]])
         elif made.part[row] >= 0:

@@ -68,6 +68,10 @@ def falls_to(bench: Bench, rate: Floats, vessel: Ints, pressure_mpa: Floats) -> 
         loss[row[now]] = factor[now]
         day[now] = day_when_down_to(bench, rate, needed, loss)[row[now]]
     out = least_by(day, asked, len(vessel))
+    # a wall that no form of the formula gives is not the lesser wall of the direction that is left
+    unknown = np.zeros(len(vessel), dtype=np.bool_)
+    unknown[asked[~given & (rated.domain != 0)]] = True
+    out = np.where(unknown, np.nan, out)
     over_limit = np.zeros(len(vessel), dtype=np.bool_)
     over = (pressure_mpa[asked] > bench.need.limit_mpa[row]) | beyond_given
     over_limit[asked[over]] = True

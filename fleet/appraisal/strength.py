@@ -6,6 +6,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from fleet.appraisal.groups import any_by
 from fleet.appraisal.inputs import Bools, Floats, Inputs, Ints
 
 
@@ -27,6 +28,12 @@ class Strength:
         Lining taken off the reading; shape (n,) [mm].
     not_told, unknown : ndarray
         Lined and no word whether the reading includes it; or its thickness is not recorded; shape (n,) [-].
+    mixed : ndarray
+        Whether the lining counts in strength and the reading says nothing or the contrary of another of its
+        location; shape (n,) [-].
+    least_mm : ndarray
+        The least that the wall in strength can be, where nobody told whether the reading includes a lining; shape (n,)
+        [mm].
     is_nominal : ndarray
         Baselines equal to nominal to the last digit; shape (n,) [-].
     nominal_mm : ndarray
@@ -40,6 +47,8 @@ class Strength:
     deduct_mm: Floats
     not_told: Bools
     unknown: Bools
+    mixed: Bools
+    least_mm: Floats
     is_nominal: Bools
     nominal_mm: Floats
 
@@ -78,6 +87,11 @@ def strength(inputs: Inputs, as_of_day: float) -> Strength:
     deduct = np.where(takes_off, np.nan_to_num(lining[location]), 0.0)
     wall = readings.thickness_mm[row] - deduct
     baseline = np.asarray(readings.kind[row] == "baseline", dtype=np.bool_)
+    # the register's baseline has no column for it: it is taken as it stands
+    told = ~np.isnan(wall) & ~baseline
+    all_with = ~any_by(told & np.asarray(includes != "yes", dtype=np.bool_), location, len(nominal))
+    all_without = ~any_by(told & np.asarray(includes != "no", dtype=np.bool_), location, len(nominal))
+    untold = lined[location] & ~counts[location] & ~baseline & np.asarray(includes == "", dtype=np.bool_)
     return Strength(
         row=row,
         location=location,
@@ -86,6 +100,8 @@ def strength(inputs: Inputs, as_of_day: float) -> Strength:
         deduct_mm=deduct,
         not_told=lined[location] & np.asarray(includes == "", dtype=np.bool_),
         unknown=takes_off & np.isnan(lining[location]),
+        mixed=lined[location] & counts[location] & ~baseline & ~(all_with | all_without)[location],
+        least_mm=np.where(untold, wall - np.nan_to_num(lining[location], nan=np.inf), wall),
         is_nominal=baseline & (np.abs(wall - nominal[location]) <= 1e-9 * wall),
         nominal_mm=nominal,
     )

@@ -353,8 +353,8 @@ def _ways_out(
         for row in rows
     )
     walls = appraisal.bench.found.now.wall_used_mm
-    unknown = any(np.isnan(judged.projected_mpa[row]) and walls[row] > 0 for row in rows) or not all(
-        part.measured for part in parts
+    unknown = bool(appraisal.bench.withheld[i]) or any(
+        np.isnan(judged.projected_mpa[row]) and walls[row] > 0 for row in rows
     )
     reaches = _least([part.projected_mawp_mpa for part in parts])
     return WaysOut(holds, None if by_minimum or unknown or not reaches else reaches, retirement)

@@ -61,7 +61,8 @@ def visits(inputs: Inputs, read: Strength, gave_wall: Bools, index: RestartIndex
     count, part = len(inputs.locations), inputs.locations.part
     _, metal = index.before(read.location, read.day)
     metal_now = index.new_metal()
-    present = metal == metal_now[read.location]
+    # a baseline that is nominal to the last digit is no visit
+    present = (metal == metal_now[read.location]) & ~read.is_nominal
     seen, day = read.location[present], read.day[present]
     last = greatest_by(day, seen, count)
     last_read = greatest_by(np.where(gave_wall[present], day, np.nan), seen, count)

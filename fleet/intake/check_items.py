@@ -202,7 +202,9 @@ class Checks:
         for vessel, part in self.shapes.keys() | self.known.parts.keys():
             parts.setdefault(vessel, set()).add(part)
         for row, day in enumerate(days):
-            if day is not None and (vessels[row], kinds[row], day) in self.known.inspections:
+            same = None if day is None else (vessels[row], kinds[row], day)
+            says_more = same in self.known.inspections_unsaid and extents[row] != ""
+            if same in self.known.inspections and not says_more:
                 found = f"{kinds[row]} inspection of '{vessels[row]}' on {day}"
                 block.doubt("already on record", row, "done_on", found)
                 block.left_out.add(row)

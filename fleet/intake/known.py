@@ -111,6 +111,8 @@ class KnownRegister:
         (vessel, part, location) to `KnownLocation` [-].
     inspections : collection
         (vessel, kind, day) of every inspection on record; such a row is not loaded again [-].
+    inspections_unsaid : collection
+        Those of them whose extent nobody said: a row that says it is loaded beside them [-].
     files : mapping
         SHA-256 of every file that was loaded whole, to what it was loaded as. A file of which rows were
         parked does not belong here: loaded again, its rows on record are passed over and the rest is tried
@@ -120,7 +122,8 @@ class KnownRegister:
     vessels: Mapping[str, KnownVessel] = field(default_factory=dict)
     parts: Mapping[PartKey, KnownPart] = field(default_factory=dict)
     locations: Mapping[LocationKey, KnownLocation] = field(default_factory=dict)
-    inspections: Collection[tuple[str, str, dt.date]] = frozenset()
+    inspections: Collection[tuple[str, str, dt.date] | None] = frozenset()
+    inspections_unsaid: Collection[tuple[str, str, dt.date] | None] = frozenset()
     files: Mapping[str, str] = field(default_factory=dict)
 
 

@@ -52,7 +52,7 @@ def in_due_order(views: Iterable[VesselView], until: date | None = None) -> list
     views : iterable of VesselView
         The vessels [-].
     until : date, optional
-        Leave out what falls due after this day; what has no date stays, for nobody can say [date].
+        Leave out what falls due after this day; what is overdue or has no date always stays [date].
 
     Returns
     -------
@@ -62,6 +62,7 @@ def in_due_order(views: Iterable[VesselView], until: date | None = None) -> list
     kept = [
         view
         for view in views
-        if view.block != RETIRED and not (until and (day := next_due_on(view)) and day > until)
+        if view.block != RETIRED
+        and (overdue_kinds(view) or not (until and (day := next_due_on(view)) and day > until))
     ]
     return sorted(kept, key=lambda view: (not overdue_kinds(view), next_due_on(view) or date.max))

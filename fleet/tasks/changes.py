@@ -14,6 +14,7 @@ from fleet.intake.tables import TABLES
 from fleet.store import models
 from fleet.tasks.names import Names
 from fleet.tasks.reader import Reader
+from fleet.words import Notice, notice
 
 BEGINNING = date(1, 1, 1)
 """The day from which the first row of an entity holds [date]."""
@@ -87,12 +88,15 @@ class Compared:
         What is to be written, outer entities first [-].
     unchanged : int
         Rows that say what is on record already [count].
+    taken_off : tuple of (tuple of str, Notice)
+        Values that a blank cell takes off the record, each with what it is about [-].
     rows : tuple of (str, tuple of str, bool, Row)
         Every row: its table, its path, whether its entity is new, the row itself [-].
     """
 
     changes: tuple[Change, ...]
     unchanged: int
+    taken_off: tuple[tuple[Path, Notice], ...]
     rows: tuple[tuple[str, Path, bool, Row], ...]
 
 
@@ -142,6 +146,7 @@ def compare(intake: Intake, in_force: RegisterRows, *, names: Names, from_on: da
     Compared
     """
     changes: list[Change] = []
+    taken_off: list[tuple[Path, Notice]] = []
     rows: list[tuple[str, Path, bool, Row]] = []
     unchanged = 0
     for table, kind in KINDS.items():
@@ -154,9 +159,26 @@ def compare(intake: Intake, in_force: RegisterRows, *, names: Names, from_on: da
             if before is not None and _says_the_same(values, before):
                 unchanged += 1
                 continue
+            if before is not None:
+                about = path[:1] if table == "relief" else path
+                taken_off += [(about, one) for one in _taken_off(table, kind, row, values, before)]
             values |= _dating(before, from_on)
             changes.append(Change(table, path, entity is None, values, row))
-    return Compared(tuple(changes), unchanged, tuple(rows))
+    return Compared(tuple(changes), unchanged, tuple(taken_off), tuple(rows))
+
+
+def _taken_off(
+    table: str, kind: Kind, row: Row, values: Mapping[str, Any], before: Mapping[str, Any]
+) -> list[Notice]:
+    """Tell the values on record that the row takes away without putting another in their place."""
+    was = json.loads(before["written"]) if before["written"] else {}
+    return [
+        notice(
+            "value taken off the record", f"{row.where}, {name}", f"{name} was {was.get(name, before[field])}"
+        )
+        for field, name in _kept_fields(table, kind).items()
+        if before[field] not in {None, ""} and values[field] in {None, ""}
+    ]
 
 
 def _entity(names: Names, kind: Kind, path: Path) -> int | None:

@@ -85,6 +85,8 @@ def fetch_on_record(reader: Reader, *, required: bool = False) -> OnRecord:
         parts=_parts(inputs, required_mm),
         locations=_locations(inputs, _baselines(reader, names), _errors(reader, inputs, names), required_mm),
         inspections=frozenset(done),
+        inspections_unsaid=frozenset(done)
+        - {one for one, extent in zip(done, inspections["extent"], strict=True) if extent},
         files={
             digest: kind
             for digest, kind, parked in zip(files["sha256"], files["kind"], files["rows_parked"], strict=True)

@@ -165,6 +165,9 @@ def fetch_readings(record: Reader, tree: Tree, in_force: levels.Levels) -> tuple
     """
     every = record.rows(models.Reading)
     reading_days = dict(zip(every["id"], every["taken_on"], strict=True))
+    for before, now in record.successors(models.Reading).items():
+        if now in reading_days:  # a doubt told of a reading stands by the day of what replaced it
+            reading_days[before] = reading_days[now]
     rows = [
         row
         for row, day in enumerate(every["taken_on"])

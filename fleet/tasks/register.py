@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from datetime import date, datetime
 from pathlib import Path as FilePath
 from typing import Any
@@ -161,7 +161,8 @@ def load_register(
     # The connection is closed: nobody has to wait while the files are checked.
     intake = read_register(
         files,
-        known=record.register,
+        # a change from a day is another matter than what the same file said before
+        known=record.register if from_on is None else replace(record.register, files={}),
         today=today,
         rule_sets=rule_set_names(),
         design_codes=tuple(DESIGN_CODES),
@@ -176,7 +177,7 @@ def load_register(
         unchanged=plan.compared.unchanged,
         parked=len(intake.parked),
         faults=intake.faults,
-        doubts=intake.doubts,
+        doubts=(*intake.doubts, *(one for _, one in compared.taken_off)),
         refused=_refusal(intake) if intake.refused else None,
         dry_run=dry_run,
         entry_no=number,
@@ -205,6 +206,7 @@ def _plan(
     told = [(_about(change), one) for change in compared.changes for one in change.row.doubts]
     told += [((str(row.values["vessel"]),), one) for row in intake.rows("inspections") for one in row.doubts]
     told = [(path, one) for path, one in told if one.code not in NOT_KEPT]
+    told += compared.taken_off
     doubts, cleared = _doubts(record, compared, told)
     return Plan(
         intake,

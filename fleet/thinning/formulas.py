@@ -7,7 +7,6 @@ from fleet.formula import Num, formula, maximum, minimum, sqrt, square, where
 _API = "API 510, Pressure Vessel Inspection Code"
 _EDITION = "10th edition numbering"
 _STATISTICS = "error propagation for independent readings"
-_OURS = "choice of this project"
 
 
 @formula(

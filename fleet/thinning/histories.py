@@ -12,7 +12,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from fleet.thinning.clock import ServiceClock
+from fleet.thinning.clock import DAYS_PER_YEAR, ServiceClock
 from fleet.thinning.fit import straight_lines
 from fleet.thinning.formulas import least_measurable_rate, loss_rate
 from fleet.thinning.observations import Observations
@@ -262,6 +262,6 @@ def history(
         least_measurable=np.where(measurable, least, np.nan),
         gain_mm=np.where(two, last_mm - used_before, np.nan),
         change_mm=np.where(two, last_mm - previous_mm, np.nan),
-        fitted_rate=np.where(several, -fit.slope * 365.25, np.nan),
-        fitted_error=np.where(several, fit.slope_error * 365.25, np.nan),
+        fitted_rate=np.where(several, -fit.slope * DAYS_PER_YEAR, np.nan),
+        fitted_error=np.where(several, fit.slope_error * DAYS_PER_YEAR, np.nan),
     )  # fmt: skip

@@ -11,6 +11,14 @@ import pytest
 from invented import Fleet, codes, location_of, one_cylinder, ordinal, part_of
 
 from fleet.appraisal.groups import any_by, count_by, greatest_by, least_by, place_of_least
+from fleet.appraisal.inputs import (
+    DEFAULT_RATE_FLOOR_MM_PER_YEAR,
+    DEFAULT_READING_ERROR_MM,
+    DEFAULT_WINDOW_DAYS,
+    Settings,
+)
+from fleet.rules import load_rule_set
+from fleet.thinning.clock import DAYS_PER_YEAR
 
 
 def test_new_metal_elsewhere_does_not_hide_a_visit_to_a_location_that_stands_before_it() -> None:
@@ -178,3 +186,95 @@ def test_a_planned_survey_that_is_past_is_as_good_as_none() -> None:
     assert [gap.found for gap in fleet.view().gaps if gap.code == "no planned survey"] == [
         "next_survey_on 2020-01-01 is past"
     ]
+
+
+def clad(*readings: tuple[str, float, str], counts: str = "no") -> Fleet:
+    fleet = Fleet()
+    fleet.vessel()
+    fleet.part(lining="overlay", lining_thickness_mm=3.0, lining_counts_in_strength=counts)
+    fleet.location()
+    for day, thickness, includes in readings:
+        fleet.read(0, (day, thickness), includes_lining=includes)
+    return fleet
+
+
+def test_an_earlier_reading_that_might_be_the_least_needs_its_word_on_the_lining() -> None:
+    # 13.0 may be 10.0 of metal and 3.0 of overlay, below the 12.5 that the last reading leaves
+    view = clad(("2010-01-01", 13.0, ""), ("2020-01-01", 15.5, "yes")).view()
+    assert view.standing == "no verdict"
+    assert "lining not told" in codes(view.gaps)
+
+
+def test_readings_that_disagree_about_a_lining_that_counts_give_no_verdict() -> None:
+    mixed = clad(("2010-01-01", 14.0, "no"), ("2020-01-01", 14.5, "yes"), counts="yes").view()
+    assert mixed.standing == "no verdict"
+    agreed = clad(("2010-01-01", 17.0, "yes"), ("2020-01-01", 16.8, "yes"), counts="yes").view()
+    assert agreed.standing != "no verdict"
+
+
+def test_a_wall_outside_every_form_today_is_no_verdict_with_a_gap() -> None:
+    # membrane, 500 mm inside radius when new: r/t falls to 10 at t = 46.7 of an outside radius of 514
+    fleet = Fleet()
+    fleet.vessel(design_code="membrane", nameplate_mawp_mpa=2.0, next_survey_day=ordinal("2034-01-01"))
+    fleet.part()
+    fleet.location()
+    fleet.read(0, ("2015-01-01", 47.5), ("2025-12-01", 47.0))
+    view = fleet.view()
+    assert view.mawp_today_mpa is None
+    assert view.standing == "no verdict"
+    assert "outside formula limits" in codes(view.gaps)
+
+
+def test_a_lapsed_nearer_choice_hides_no_wider_one_that_stands() -> None:
+    fleet = one_cylinder(("2015-01-01", 13.0), ("2024-01-01", 12.5))
+    fleet.decide(0, "chosen rate", "2025-01-01", rate_mm_per_year=0.3, review_day=ordinal("2030-01-01"))
+    fleet.decide(0, "chosen rate", "2025-02-01", part=0, location=0, rate_mm_per_year=0.1, second_by="B",
+                 review_day=ordinal("2025-06-01"))  # fmt: skip
+    place = location_of(fleet.view())
+    assert (place.rate_basis, place.planning_rate_mm_per_year) == ("chosen", 0.3)
+
+
+def test_no_pressure_is_promised_where_there_is_no_verdict() -> None:
+    fleet = one_cylinder(("2015-01-01", 13.0), ("2024-01-01", 12.5))
+    fleet.read(0, ("2025-01-01", None), result="no echo")
+    ways = fleet.view().ways_out
+    assert ways is not None
+    assert ways.pressure_that_reaches_mpa is None
+
+
+def test_a_baseline_at_nominal_is_no_visit() -> None:
+    fleet = one_cylinder(("2010-01-01", 13.0), ("2020-01-01", 12.8), next_survey_day=ordinal("2028-01-01"))
+    fleet.location(0, "L2")
+    fleet.read(1, ("2022-01-01", 14.0), kind="baseline")
+    view = fleet.view()
+    assert "part not read at last visit" not in codes(view.gaps)
+    assert view.standing == "rating held"
+
+
+def test_no_date_of_a_withheld_formula_stands_for_the_whole_part() -> None:
+    # membrane, D 1000, t 100: at 10 MPa the hoop wall is outside the thin form; the axial wall alone says nothing
+    fleet = Fleet()
+    fleet.vessel(design_code="membrane", nameplate_mawp_mpa=12.0)
+    fleet.vessels[0]["current_mawp_mpa"] = 5.0
+    fleet.part(nominal_thickness_mm=100.0)
+    fleet.location()
+    fleet.read(0, ("2015-01-01", 30.0), ("2025-12-01", 29.0))
+    fleet.relieve(0, 10.5)
+    assert fleet.view().relief[0].reset_by_on is None
+
+
+def test_an_inspection_without_extent_does_not_count_and_says_so() -> None:
+    fleet = one_cylinder(("2015-01-01", 13.0), ("2024-01-01", 12.9), inspected="2018-01-01")
+    fleet.inspect(0, "internal", "2023-01-01", extent="")
+    view = fleet.view()
+    assert view.internal_due_on == date(2028, 1, 1)
+    assert "inspection extent blank" in codes(view.gaps)
+
+
+def test_the_choices_of_the_project_stand_once() -> None:
+    choices = load_rule_set("choices")
+    assert choices["days_per_year"] == DAYS_PER_YEAR
+    assert choices["reading_error_mm"] == DEFAULT_READING_ERROR_MM
+    assert choices["observation_window_days"] == DEFAULT_WINDOW_DAYS
+    assert choices["rate_floor_mm_per_year"] == DEFAULT_RATE_FLOOR_MM_PER_YEAR
+    assert choices["list_life_years"] == Settings().list_life_years

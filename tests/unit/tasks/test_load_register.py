@@ -277,3 +277,31 @@ def test_nothing_is_written_on_what_somebody_else_changed_meanwhile(
     with pytest.raises(Refused, match="somebody else wrote to the record"):
         load_register(engine, [write(tmp_path, "v.csv", VESSELS)], by="A. Keel", today=TODAY)
     assert entries() == 2
+
+
+def test_a_blank_cell_takes_a_value_off_the_record_and_says_so(works: Engine, load: Load, rows: Rows) -> None:
+    done = load("vessel,part,shape,structural_minimum [mm]\nV-101,shell,cylinder,6\n")
+    assert "value taken off the record" not in {one.code for one in done.doubts}
+    done = load("vessel,part,shape,structural_minimum [mm]\nV-101,shell,cylinder,\n")
+    (told,) = [one for one in done.doubts if one.code == "value taken off the record"]
+    assert told.found == "structural_minimum was 6 mm"
+    assert told.code in {row["code"] for row in rows(models.Doubt)}
+
+
+def test_the_same_bytes_tell_of_a_change_when_a_day_is_named(works: Engine, tmp_path: Path) -> None:
+    path = write(tmp_path, "parts.csv", "vessel,part,shape,material\nV-101,shell,cylinder,SA-516-70\n")
+    first = load_register(works, [path], by="A. Keel", today=TODAY)
+    assert first.loaded == 1
+    other = write(tmp_path, "other.csv", "vessel,part,shape,material\nV-101,shell,cylinder,SA-285-C\n")
+    load_register(works, [other], by="A. Keel", today=TODAY)
+    again = load_register(works, [path], by="A. Keel", today=TODAY, from_on=date(2026, 6, 1))
+    assert again.loaded == 1
+
+
+def test_an_inspection_whose_extent_nobody_said_can_be_told_again_with_it(works: Engine, load: Load) -> None:
+    blank = load("vessel,kind,done_on\nV-101,internal,2025-05-05\n")
+    assert blank.loaded == 1
+    full = load("vessel,kind,done_on,extent\nV-101,internal,2025-05-05,full\n")
+    assert full.loaded == 1
+    again = load("vessel,kind,done_on,extent,inspector\nV-101,internal,2025-05-05,full,R. Salt\n")
+    assert again.loaded == 0
