@@ -439,7 +439,7 @@ def test_the_list_says_what_json_says(book: Any, listed: list[Json]) -> None:
             "Retirement": v["retirement_on"],
             "Internal or on-stream due": v["internal_due_on"],
             "External due": v["external_due_on"],
-            "Governs due": place(v["governing_due"], "cap of the rule set"),
+            "Governs due": place(v["governing_due"], "cap of the rule set" if v["internal_due_on"] else "–"),
             "Interval [years]": down(v["internal_interval_years"], 1),
             "Governs life": place(v["governing_life"]),
             "Doubts": len(v["doubts"]),
