@@ -1,4 +1,4 @@
-"""When each vessel is due, and the date to which its wall must carry the pressure: design rules 7 and 8."""
+"""When each vessel is due, and the date to which its wall must carry the pressure: rules 7 and 8."""
 
 from __future__ import annotations
 

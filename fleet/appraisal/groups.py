@@ -96,19 +96,3 @@ def any_by(flags: Bools, group: Ints, groups: int) -> Bools:
     out = np.zeros(groups, dtype=np.bool_)
     out[group[flags]] = True
     return out
-
-
-def count_by(flags: Bools, group: Ints, groups: int) -> Ints:
-    """Count the flagged rows of each group.
-
-    Parameters
-    ----------
-    flags, group, groups
-        As in `any_by` [-].
-
-    Returns
-    -------
-    ndarray of int
-        Shape (groups,) [count].
-    """
-    return np.bincount(group[flags], minlength=groups).astype(np.int64)

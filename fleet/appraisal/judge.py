@@ -1,4 +1,4 @@
-"""Everything that rests on the planning rate: life, dates, projection, MAWP, standing. Design rules 6 to 13."""
+"""Everything that rests on the planning rate: life, dates, projection, MAWP, standing. Rules 6 to 13."""
 
 from __future__ import annotations
 
@@ -104,8 +104,6 @@ class Judged:
         Due dates [-].
     carry : Carry
         Carry-to dates [-].
-    horizon_day : ndarray
-        A retirement up to this day is `running out` [day].
     vessel_standing : ndarray
         Place in `STANDINGS` of the vessel [-].
     due_uncertain : ndarray
@@ -128,7 +126,6 @@ class Judged:
     standing: Ints
     due: Dues
     carry: Carry
-    horizon_day: Floats
     vessel_standing: Ints
     due_uncertain: Bools
     retirement_place: Ints
@@ -263,7 +260,6 @@ def judge(bench: Bench, plan: Planning) -> Judged:
         standing=standing,
         due=due,
         carry=carry,
-        horizon_day=horizon,
         vessel_standing=worst,
         due_uncertain=any_by(lacks, vessel_of, vessels),
         retirement_place=retirement_place,

@@ -1,4 +1,4 @@
-"""From readings to histories and planning rates: design rules 1 to 4, for all locations at once."""
+"""From readings to histories and planning rates: rules 1 to 4 of an appraisal, for all locations at once."""
 
 from __future__ import annotations
 
@@ -6,7 +6,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from fleet.appraisal.groups import any_by, count_by, greatest_by
+from fleet.appraisal.groups import any_by, greatest_by
 from fleet.appraisal.inputs import Bools, Floats, Inputs, Ints
 from fleet.appraisal.rates import Ground, rates
 from fleet.appraisal.restarts import RestartIndex
@@ -50,10 +50,6 @@ class Thinned:
         Reading error of the wall used [mm].
     baseline_is_nominal : ndarray
         Whether a baseline equal to nominal was taken as nominal [-].
-    readings : ndarray
-        Counting readings of the present history [count].
-    last_row : ndarray
-        Row of the last observation's reading in the table of readings, -1 where none [-].
     """
 
     live: Bools
@@ -72,8 +68,6 @@ class Thinned:
     without_queried: Bools
     wall_error_mm: Floats
     baseline_is_nominal: Bools
-    readings: Ints
-    last_row: Ints
 
 
 def thinned(inputs: Inputs, clock: ServiceClock, as_of_day: float) -> Thinned:
@@ -137,8 +131,6 @@ def thinned(inputs: Inputs, clock: ServiceClock, as_of_day: float) -> Thinned:
         if len(usable)
         else now.last_reading
     )
-    has = last >= 0
-    last_row = np.where(has, read.row[np.maximum(last, 0)], -1) if len(read.row) else last
     return Thinned(
         live=live,
         live_part=live_part,
@@ -159,8 +151,6 @@ def thinned(inputs: Inputs, clock: ServiceClock, as_of_day: float) -> Thinned:
         queried_low=any_by(queried & seen.counted & same_metal, at, count),
         queried_high=any_by(queried & ~seen.counted & present, at, count),
         baseline_is_nominal=any_by(read.is_nominal, read.location, count),
-        readings=count_by(seen.counted & present, at, count),
-        last_row=last_row,
     )
 
 

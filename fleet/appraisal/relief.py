@@ -1,4 +1,4 @@
-"""When the projected MAWP falls to a given pressure: a relief setting, an operating pressure. Design rule 12."""
+"""When the projected MAWP falls to a given pressure: a relief setting, an operating pressure. Rule 12."""
 
 from __future__ import annotations
 

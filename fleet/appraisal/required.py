@@ -1,4 +1,4 @@
-"""Geometry of every location and part, the thickness it needs, and the pressure a wall carries: design rules 4 and 5.
+"""Geometry of every location and part, the thickness it needs, and the pressure a wall carries: rules 4 and 5.
 
 Rows are the locations followed by the parts themselves, so that a part without a location still has its required
 thickness.
@@ -52,8 +52,6 @@ class Needs:
         Part and vessel of the row [-].
     geometry : Geometry
         The rows' geometry [-].
-    walls_mm : ndarray
-        Required thickness by each of `SETS`, NaN where none; shape (7, rows) [mm].
     known_mm : ndarray
         The largest of those that are known [mm].
     required_mm : ndarray
@@ -80,7 +78,6 @@ class Needs:
     part: Ints
     vessel: Ints
     geometry: Geometry
-    walls_mm: Floats
     known_mm: Floats
     required_mm: Floats
     by: Ints
@@ -264,7 +261,6 @@ def needs(inputs: Inputs, pressures: Pressures) -> Needs:
         part=part,
         vessel=vessel,
         geometry=shape_of_rows,
-        walls_mm=walls,
         known_mm=known,
         required_mm=np.where(complete, known, np.nan),
         by=by,

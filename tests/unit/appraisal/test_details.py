@@ -10,7 +10,7 @@ import numpy as np
 import pytest
 from invented import Fleet, codes, location_of, one_cylinder, ordinal, part_of
 
-from fleet.appraisal.groups import any_by, count_by, greatest_by, least_by, place_of_least
+from fleet.appraisal.groups import any_by, greatest_by, least_by, place_of_least
 from fleet.appraisal.inputs import (
     DEFAULT_RATE_FLOOR_MM_PER_YEAR,
     DEFAULT_READING_ERROR_MM,
@@ -120,7 +120,6 @@ def test_groups_without_rows_have_nothing() -> None:
     assert np.array_equal(greatest_by(values, group, 4), [2.0, np.nan, 5.0, np.nan], equal_nan=True)
     assert place_of_least(values, group, 4).tolist() == [0, -1, 2, -1]
     assert any_by(np.array([True, False, True]), group, 4).tolist() == [True, False, True, False]
-    assert count_by(np.array([True, True, False]), group, 4).tolist() == [2, 0, 0, 0]
 
 
 BLANKS = ("allowable_stress_mpa", "inside_diameter_mm", "nominal_thickness_mm", "joint_efficiency_long",
